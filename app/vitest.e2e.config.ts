@@ -1,0 +1,16 @@
+import { fileURLToPath } from 'node:url';
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  resolve: {
+    alias: { '@': fileURLToPath(new URL('./src', import.meta.url)) },
+    conditions: ['source', 'module', 'node'],
+  },
+  test: {
+    include: ['e2e/**/*.spec.ts'],
+    environment: 'node',
+    fileParallelism: false,
+    testTimeout: 120_000,
+    hookTimeout: 180_000,
+  },
+});

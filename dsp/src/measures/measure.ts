@@ -1,0 +1,32 @@
+import type { BenchRecord, Calibration, MeasureId } from '../record/record.js';
+import type { CaptureFacts, SampleSource } from '../source/sample-source.js';
+import type { StimulusDescriptor } from '../stimulus/descriptor.js';
+
+/** What a person may ask for; what is left out takes the measure's default and stands in the record's settings. */
+export interface AnalysisSettings {
+  readonly fromS?: number;
+  readonly toS?: number;
+  readonly bandLowHz?: number;
+  readonly bandHighHz?: number;
+  readonly highestHarmonic?: number;
+  readonly channel?: 'left' | 'right' | 'all';
+  readonly calibration?: Calibration | null;
+  readonly baseline?: BenchRecord | null;
+}
+
+export interface AnalysisContext {
+  readonly capture: CaptureFacts;
+  readonly descriptor?: StimulusDescriptor | null;
+  /** Told the share of the work done, 0 to 1, never falling. */
+  readonly onProgress?: (share: number) => void;
+  /** Looked at between blocks; once aborted, the analysis throws `CANCELLED`. */
+  readonly signal?: { readonly aborted: boolean };
+}
+
+/** One way to analyse a capture. Command line, worker, server and pages find it in the registry. */
+export interface Measure {
+  readonly id: MeasureId;
+  /** What it is called on a page. */
+  readonly title: string;
+  analyse(source: SampleSource, settings: AnalysisSettings, context: AnalysisContext): Promise<BenchRecord>;
+}
