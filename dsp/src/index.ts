@@ -5,3 +5,4 @@ export * from './record/warning.js';
 export * from './measures/measure.js';
 export * from './stimulus/descriptor.js';
 export * from './random/create-random.js';
+export * from './record/make-warning.js';
