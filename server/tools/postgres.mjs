@@ -5,7 +5,15 @@
 // --test: a throw-away cluster without fsync.
 import { spawnSync } from 'node:child_process';
 import { createHash, randomBytes } from 'node:crypto';
-import { existsSync, mkdirSync, readFileSync, readdirSync, readlinkSync, rmSync, writeFileSync } from 'node:fs';
+import {
+  existsSync,
+  mkdirSync,
+  readFileSync,
+  readdirSync,
+  readlinkSync,
+  rmSync,
+  writeFileSync,
+} from 'node:fs';
 import { createServer } from 'node:net';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -25,12 +33,16 @@ function run(command, args, options = {}) {
 
 /** Runs a program as the user that owns the cluster. */
 function runAsOwner(command, args, options = {}) {
-  return IS_ROOT ? run('runuser', ['-u', 'postgres', '--', command, ...args], options) : run(command, args, options);
+  return IS_ROOT
+    ? run('runuser', ['-u', 'postgres', '--', command, ...args], options)
+    : run(command, args, options);
 }
 
 function must(result, what) {
   if (result.status !== 0) {
-    throw new SetupError(`${what} failed: ${(result.stderr || result.stdout || String(result.error ?? '')).trim()}`);
+    throw new SetupError(
+      `${what} failed: ${(result.stderr || result.stdout || String(result.error ?? '')).trim()}`,
+    );
   }
   return result.stdout;
 }
@@ -51,7 +63,8 @@ function findBinaries() {
     readdirSync(base)
       .sort((a, b) => Number(b) - Number(a))
       .map((version) => path.join(base, version, 'bin'))
-      .find((folder) => existsSync(path.join(folder, 'initdb')) && existsSync(path.join(folder, 'pg_ctl'))) ?? null
+      .find((folder) => existsSync(path.join(folder, 'initdb')) && existsSync(path.join(folder, 'pg_ctl'))) ??
+    null
   );
 }
 
@@ -73,9 +86,13 @@ export function ensurePostgres() {
   }
   const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' };
   must(run('apt-get', ['update', '-qq'], { env }), 'apt-get update');
-  must(run('apt-get', ['install', '-y', '-qq', '--no-install-recommends', 'postgresql'], { env }), 'apt-get install postgresql');
+  must(
+    run('apt-get', ['install', '-y', '-qq', '--no-install-recommends', 'postgresql'], { env }),
+    'apt-get install postgresql',
+  );
   const bin = findBinaries();
-  if (!bin) throw new SetupError('PostgreSQL was installed, but no server is to be found under /usr/lib/postgresql.');
+  if (!bin)
+    throw new SetupError('PostgreSQL was installed, but no server is to be found under /usr/lib/postgresql.');
   return bin;
 }
 
@@ -129,20 +146,31 @@ async function findRunning(bin, data) {
 
 function makeCluster(bin, { home, data }) {
   if (runAsOwner('test', ['-e', path.join(data, 'PG_VERSION')]).status === 0) {
-    const have = must(runAsOwner('cat', [path.join(data, 'PG_VERSION')]), 'reading the cluster version').trim();
+    const have = must(
+      runAsOwner('cat', [path.join(data, 'PG_VERSION')]),
+      'reading the cluster version',
+    ).trim();
     const want = /(\d+)/.exec(must(run(path.join(bin, 'postgres'), ['--version']), 'postgres --version'))[1];
     if (have !== want) {
-      throw new SetupError(`${data} was made by PostgreSQL ${have}, but the server here is ${want}. Upgrade it with pg_upgrade first.`);
+      throw new SetupError(
+        `${data} was made by PostgreSQL ${have}, but the server here is ${want}. Upgrade it with pg_upgrade first.`,
+      );
     }
     return;
   }
-  if (IS_ROOT) must(run('install', ['-d', '-o', 'postgres', '-g', 'postgres', '-m', '700', home]), 'making the data folder');
+  if (IS_ROOT)
+    must(
+      run('install', ['-d', '-o', 'postgres', '-g', 'postgres', '-m', '700', home]),
+      'making the data folder',
+    );
   else mkdirSync(home, { recursive: true, mode: 0o700 });
   const fresh = path.join(home, 'data.new');
   const passwordFile = path.join(home, 'password');
   runAsOwner('rm', ['-rf', fresh]);
   must(
-    runAsOwner('sh', ['-c', 'umask 077; cat >"$1"', 'sh', passwordFile], { input: randomBytes(24).toString('hex') }),
+    runAsOwner('sh', ['-c', 'umask 077; cat >"$1"', 'sh', passwordFile], {
+      input: randomBytes(24).toString('hex'),
+    }),
     'writing the database password',
   );
   must(
@@ -162,9 +190,13 @@ async function launch(bin, { data, log }, isTest) {
   let port = !isTest && (await portIsFree(preferred)) ? preferred : await findFreePort();
   for (let attempt = 1; ; attempt++) {
     const flags = [...options, `port=${port}`].map((option) => `-c ${option}`).join(' ');
-    const result = runAsOwner(path.join(bin, 'pg_ctl'), ['-D', data, '-l', log, '-w', '-t', '60', '-o', flags, 'start'], {
-      stdio: 'ignore',
-    });
+    const result = runAsOwner(
+      path.join(bin, 'pg_ctl'),
+      ['-D', data, '-l', log, '-w', '-t', '60', '-o', flags, 'start'],
+      {
+        stdio: 'ignore',
+      },
+    );
     if (result.status === 0) return;
     if (attempt === 5) throw new SetupError(`PostgreSQL does not start; see ${log}.`);
     port = await findFreePort();
@@ -186,7 +218,10 @@ export async function startCluster({ isTest = false } = {}) {
     await launch(bin, paths, isTest);
     server = await findRunning(bin, paths.data);
   }
-  const password = must(runAsOwner('cat', [path.join(paths.home, 'password')]), 'reading the database password').trim();
+  const password = must(
+    runAsOwner('cat', [path.join(paths.home, 'password')]),
+    'reading the database password',
+  ).trim();
   const address = `${password}@127.0.0.1:${server.port}`;
   const adminUrl = `postgres://${SUPERUSER}:${address}/postgres`;
   const psql = (sql) => must(run(path.join(bin, 'psql'), ['-X', '-At', '-c', sql, adminUrl]), 'psql').trim();
@@ -203,7 +238,12 @@ export async function stopCluster({ isTest = false } = {}) {
   const bin = findBinaries();
   const { data } = clusterPaths(isTest);
   if (!bin || !(await findRunning(bin, data))) return;
-  must(runAsOwner(path.join(bin, 'pg_ctl'), ['-D', data, '-m', 'fast', '-w', '-t', '60', 'stop'], { stdio: 'ignore' }), 'pg_ctl stop');
+  must(
+    runAsOwner(path.join(bin, 'pg_ctl'), ['-D', data, '-m', 'fast', '-w', '-t', '60', 'stop'], {
+      stdio: 'ignore',
+    }),
+    'pg_ctl stop',
+  );
 }
 
 export async function destroyCluster({ isTest = false } = {}) {
