@@ -53,6 +53,9 @@ const vitest = (name, config) => () =>
 
 let testDatabaseUrl = '';
 
+/** Write WAV files that are not our own. */
+const PUBLIC_TOOLS = ['sox', 'ffmpeg', 'sndfile-programs'];
+
 const STEPS = {
   format: whole('prettier', '--check', '--log-level', 'warn', '.'),
   lint: whole('eslint', '.', '--max-warnings', '0'),
@@ -85,10 +88,12 @@ async function prepare(steps) {
     testDatabaseUrl = (await startCluster({ isTest: true })).adminUrl;
   }
   if (steps.includes('e2e')) {
-    ensureDebian('chromium', ['chromium'], 'the end-to-end tests');
-    ensureDebian('sox', ['sox'], 'the end-to-end tests');
-    ensureDebian('ffmpeg', ['ffmpeg'], 'the end-to-end tests');
-    ensureDebian('sndfile-convert', ['sndfile-programs'], 'the end-to-end tests');
+    ensureDebian('command -v chromium', ['chromium'], 'the end-to-end tests');
+    ensureDebian(
+      'command -v sox && command -v ffmpeg && command -v sndfile-convert',
+      PUBLIC_TOOLS,
+      'the end-to-end tests',
+    );
   }
 }
 

@@ -54,9 +54,9 @@ export function runShown(command, args, options = {}) {
     throw new Error(`${command} ${args.join(' ')} ended with ${result.status ?? result.signal}`);
 }
 
-/** Installs Debian packages when one of the named programs is missing. Only root can. */
-export function ensureDebian(program, packages, purpose) {
-  const isThere = () => spawnSync('sh', ['-c', `command -v ${program}`]).status === 0;
+/** Installs Debian packages unless the shell command `check` succeeds. Only root can. */
+export function ensureDebian(check, packages, purpose) {
+  const isThere = () => spawnSync('sh', ['-c', check], { stdio: 'ignore' }).status === 0;
   if (isThere()) return;
   const command = `apt-get install -y --no-install-recommends ${packages.join(' ')}`;
   if (process.getuid?.() !== 0)
@@ -68,7 +68,7 @@ export function ensureDebian(program, packages, purpose) {
     env,
     stdio: ['ignore', 'ignore', 'inherit'],
   });
-  if (!isThere()) throw new Error(`${program} is still missing after installing ${packages.join(', ')}`);
+  if (!isThere()) throw new Error(`${packages.join(', ')} was installed, but "${check}" still fails`);
 }
 
 /** Starts a long-running process of the project; `onEnd` hears its exit code. */
