@@ -6,3 +6,8 @@ export * from './measures/measure.js';
 export * from './stimulus/descriptor.js';
 export * from './random/create-random.js';
 export * from './record/make-warning.js';
+export * from './source/channel-name.js';
+export * from './source/find-non-finite.js';
+export * from './source/open-memory-source.js';
+export * from './source/slice-source.js';
+export * from './source/select-channels.js';
