@@ -29,6 +29,58 @@ export const WARNING_SENTENCES = {
     'The samples use more than the {bits} bits the header calls valid: they were read as they stand, against the full scale of {containerBits} bits.',
   'over-full-scale':
     'The channel {channel} has {count} samples beyond full scale, up to {peak} times full scale: they were kept as they are.',
+  // the recording
+  'too-short':
+    'The segment of {duration} s is too short for a tone of {frequency} Hz: lines closer than {resolution} Hz run together. Record at least {wanted} s.',
+  'channel-silent': 'The channel {channel} holds digital silence: it has no figures.',
+  'tone-missing': 'The channel {channel} holds no steady tone: it has no figures.',
+  'tone-not-steady':
+    'The tone is not steady ({change}): figures near the tone are only a guide. Check for pumping, dropouts or a varying speed.',
+  'level-too-low':
+    'The tone lies at {level} dBFS, so its figures show the noise: raise the level or the recorder’s gain.',
+  'level-assumed': 'Nothing says at which level the tone was played: it was taken as the unit’s -60 dBFS.',
+  'level-unexpected':
+    'The tone lies at {level} dBFS, far above the -60 dBFS it is taken for: if it was played louder, the dynamic range is wrong by as much.',
+  'recording-overloaded':
+    'The recording is clipped: {runs} runs of three or more samples stand at an end of the scale, the first at {at} s. Lower the recorder’s gain and record again.',
+  'near-full-scale':
+    'The recording peaks at {peak} dBFS: leave the recorder some headroom, or its own distortion may show.',
+  'dc-offset':
+    'The recording stands off zero by {offset} % of full scale ({level} dBFS). The figures leave it out.',
+  'signal-present':
+    'The channel {channel} isn’t idle: a line at {frequency} Hz stands at {level} dBFS and is counted as noise.',
+  // the frequency band
+  'band-widened':
+    'The tone of {frequency} Hz lies at the end of the usual band: the band was widened to {high} Hz.',
+  'band-cut': 'At a rate of {rate} Hz the band can’t reach {asked} Hz: it ends at {high} Hz.',
+  'band-near-limit':
+    'The band reaches {high} Hz, more than 0.46 of the rate of {rate} Hz: the converters’ filters take part of it.',
+  'tone-outside-band': 'The tone of {frequency} Hz lies outside the band: it was measured all the same.',
+  'no-harmonics-in-band':
+    'No harmonic of {frequency} Hz lies inside the band: there is no THD. Widen the band or use a lower tone.',
+  // what stands in the way
+  'harmonics-in-noise': 'No harmonic stands out of the noise: THD is below {below} dB.',
+  'hum-in-residual':
+    'Mains hum makes up more than half of what is left beside the tone ({level} dBFS at multiples of {frequency} Hz): look to the ground connections first.',
+  'hum-on-harmonic':
+    'The tone’s line or a harmonic falls on a multiple of {frequency} Hz mains: hum and distortion can’t be told apart there. Use another frequency.',
+  'no-hum': 'No line of 50 or 60 Hz mains or its multiples stands out of the noise.',
+  'hum-unresolved':
+    'The segment of {duration} s is too short to tell mains hum from noise: record at least {wanted} s.',
+  'digital-silence':
+    'Every sample of the channel {channel} is zero: the player or recorder muted, and noise can’t be stated.',
+  'nothing-left':
+    'Beside the tone every sample of the channel {channel} is accounted for: noise can’t be stated.',
+  // what a figure is worth
+  'quantisation-limited': 'The {bits} bits of the recording set these figures, not the unit.',
+  'rig-limited': 'These figures lie within 3 dB of the rig’s own: they show the rig, not the unit.',
+  'rig-influenced': 'The rig has a part in these figures: the bounds beside each say how much.',
+  'baseline-not-applicable': 'The rig’s baseline was not applied: {reason}.',
+  'calibration-incomplete':
+    'The calibration says nothing of the channel {channel}: it has no figures in volts.',
+  'stimulus-mismatch':
+    'The descriptor says {declared}, and the recording holds {found}: it was measured as it is.',
+  'recording-cut': 'The recording {where}: what is there was measured.',
   'stimulus-assumed':
     'The recording has neither marks nor a descriptor: it was measured as a {name}, with levels relative to the loudest part.',
 } as const;
