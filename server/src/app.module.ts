@@ -1,0 +1,25 @@
+import { Module, type DynamicModule } from '@nestjs/common';
+import { LoggerModule } from 'nestjs-pino';
+import { loggerOptions } from './common/logger-options';
+import { ShutdownModule } from './common/shutdown-state';
+import { EnvModule } from './config/env.module';
+import type { Env } from './config/env.schema';
+import { DatabaseModule } from './database/database.module';
+import { HealthModule } from './health/health.module';
+
+/** The HTTP process. Feature modules are listed one a line. */
+@Module({})
+export class AppModule {
+  static with(env: Env): DynamicModule {
+    return {
+      module: AppModule,
+      imports: [
+        EnvModule.with(env),
+        LoggerModule.forRoot(loggerOptions(env)),
+        ShutdownModule,
+        DatabaseModule,
+        HealthModule,
+      ],
+    };
+  }
+}
