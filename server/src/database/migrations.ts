@@ -1,4 +1,10 @@
 import { CreatePeople1764570000000 } from './migrations/1764570000000-create-people';
+import { CreateAccess1764570000100 } from './migrations/1764570000100-create-access';
+import { CreateMailAndAudit1764570000200 } from './migrations/1764570000200-create-mail-and-audit';
 
 /** Every migration in order; one that has been merged is never edited. */
-export const migrations = [CreatePeople1764570000000];
+export const migrations = [
+  CreatePeople1764570000000,
+  CreateAccess1764570000100,
+  CreateMailAndAudit1764570000200,
+];

@@ -24,7 +24,7 @@ export async function runMigrations(env: DatabaseEnv): Promise<string[]> {
   try {
     await lock.query('SELECT pg_advisory_lock($1)', [MIGRATION_LOCK]);
     const done = await dataSource.runMigrations();
-    const stored = await lock.query<{ name: string }[]>('SELECT name FROM migration ORDER BY id');
+    const stored = (await lock.query('SELECT name FROM migration ORDER BY id')) as { name: string }[];
     const known = new Set(migrations.map((migration) => migration.name));
     const unknown = stored.find(({ name }) => !known.has(name));
     if (unknown) {
