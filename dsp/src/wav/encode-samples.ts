@@ -5,13 +5,13 @@ import { findNonFinite } from '../source/find-non-finite.js';
 import type { StimulusBits } from '../stimulus/descriptor.js';
 import { viewOf } from './little-endian.js';
 
-export type Dither = 'tpdf' | 'none';
+export type WavDither = 'tpdf' | 'none';
 
 /** How samples are to stand in the file. */
 export interface SampleEncoding {
   readonly bits: StimulusBits;
   /** Applies to 16 and 24 bits; float needs none. */
-  readonly dither: Dither;
+  readonly dither: WavDither;
   /** Whole number, 0 to 2^32 - 1; channel c draws from a generator of its own, seeded with seed + c. */
   readonly seed: number;
 }
