@@ -29,7 +29,7 @@ describe('schema', () => {
     await runMigrations(env);
     const dataSource = await createDataSource(env).initialize();
     try {
-      for (const _ of migrations) await dataSource.undoLastMigration();
+      for (let left = migrations.length; left > 0; left--) await dataSource.undoLastMigration();
       const tables = await dataSource.query<{ name: string }[]>(
         `SELECT table_name AS name FROM information_schema.tables WHERE table_schema = 'public'`,
       );

@@ -4,6 +4,7 @@ export const ROLES = ['technician', 'reviewer', 'peer', 'administrator', 'reader
 export type Role = (typeof ROLES)[number];
 
 export const ACCESS_RULE = Symbol('ACCESS_RULE');
+export const SESSION_ONLY = Symbol('SESSION_ONLY');
 
 /** What a route asks for; a route without a rule is refused to everybody. */
 export type AccessRule = { kind: 'public' } | { kind: 'roles'; roles: readonly Role[] };
@@ -17,3 +18,6 @@ export const Roles = (...roles: [Role, ...Role[]]) =>
 
 /** Every signed-in person may call the route. */
 export const SignedIn = () => Roles(...ROLES);
+
+/** The route (or every route of the controller) can't be called with an API token: it could give away the account. */
+export const SessionOnly = () => SetMetadata(SESSION_ONLY, true);
