@@ -99,6 +99,32 @@ function readContainerBits(bytes: Uint8Array, offset: number, kind: SampleKind):
   return containerBits;
 }
 
+function readChannelCount(view: DataView, offset: number): number {
+  const channelCount = view.getUint16(2, true);
+  checkRange(channelCount, 1, MOST_CHANNELS, () =>
+    refuseWav('WAV_BAD_CHANNEL_COUNT', {
+      what: `the file must have 1 to ${MOST_CHANNELS} channels`,
+      offset: offset + 2,
+      found: `${channelCount} channels`,
+      remedy: channelCount === 0 ? EXPORT_AGAIN : 'Export the channels under test alone.',
+    }),
+  );
+  return channelCount;
+}
+
+function readSampleRate(view: DataView, offset: number): number {
+  const sampleRateHz = view.getUint32(4, true);
+  checkRange(sampleRateHz, LOWEST_RATE_HZ, HIGHEST_RATE_HZ, () =>
+    refuseWav('WAV_BAD_SAMPLE_RATE', {
+      what: `the sample rate must lie between ${LOWEST_RATE_HZ} and ${HIGHEST_RATE_HZ} Hz`,
+      offset: offset + 4,
+      found: `${sampleRateHz} Hz`,
+      remedy: EXPORT_AGAIN,
+    }),
+  );
+  return sampleRateHz;
+}
+
 /**
  * Reads the content of a `fmt ` chunk.
  *
@@ -130,24 +156,8 @@ export function readFormat(bytes: Uint8Array, offset: number): StatedFormat {
       remedy: RECORD_UNCOMPRESSED,
     });
   }
-  const channelCount = view.getUint16(2, true);
-  checkRange(channelCount, 1, MOST_CHANNELS, () =>
-    refuseWav('WAV_BAD_CHANNEL_COUNT', {
-      what: `the file must have 1 to ${MOST_CHANNELS} channels`,
-      offset: offset + 2,
-      found: `${channelCount} channels`,
-      remedy: channelCount === 0 ? EXPORT_AGAIN : 'Export the channels under test alone.',
-    }),
-  );
-  const sampleRateHz = view.getUint32(4, true);
-  checkRange(sampleRateHz, LOWEST_RATE_HZ, HIGHEST_RATE_HZ, () =>
-    refuseWav('WAV_BAD_SAMPLE_RATE', {
-      what: `the sample rate must lie between ${LOWEST_RATE_HZ} and ${HIGHEST_RATE_HZ} Hz`,
-      offset: offset + 4,
-      found: `${sampleRateHz} Hz`,
-      remedy: EXPORT_AGAIN,
-    }),
-  );
+  const channelCount = readChannelCount(view, offset);
+  const sampleRateHz = readSampleRate(view, offset);
   const containerBits = readContainerBits(bytes, offset, kind);
   const blockAlign = view.getUint16(12, true);
   const expectedAlign = (channelCount * containerBits) / 8;

@@ -77,6 +77,32 @@ async function isFollowedByChunk(file: FileWindow, offset: number): Promise<bool
   );
 }
 
+/** The size a chunk claims: its own, or where that is all ones, the one that ds64 gives. */
+function claimedBytes({ id, declaredBytes }: Head, wideSizes: WideSizes | null): number {
+  if (declaredBytes !== SIZE_ELSEWHERE || wideSizes === null) {
+    return declaredBytes;
+  }
+  return id === 'data' ? wideSizes.dataBytes : (wideSizes.table.get(id) ?? declaredBytes);
+}
+
+/** Says what of the row of chunks, and behind it, was not read. */
+function warnOfUnread(chunks: readonly ScannedChunk[], endOffset: number, file: FileWindow): Warning[] {
+  const warnings: Warning[] = [];
+  if (endOffset < file.sizeBytes) {
+    const rest = { offset: endOffset, present: byteCount(file.sizeBytes - endOffset), count: MOST_CHUNKS };
+    warnings.push(makeWarning(chunks.length === MOST_CHUNKS ? 'too-many-chunks' : 'trailing-bytes', rest));
+  }
+  for (const chunk of chunks) {
+    if (chunk.id !== 'data' && chunk.declaredBytes > chunk.sizeBytes) {
+      const declared = byteCount(chunk.declaredBytes);
+      const present = byteCount(chunk.sizeBytes);
+      const about = { chunk: `"${chunk.id}"`, offset: chunk.offset - HEAD_BYTES, declared, present };
+      warnings.push(makeWarning('chunk-cut-short', about));
+    }
+  }
+  return warnings;
+}
+
 /**
  * Walks over the chunks of a file without reading their content. A size is never believed beyond the end of the file.
  * Data of a placeholder's size reach to the end of the file.
@@ -88,52 +114,30 @@ export async function scanChunks(file: FileWindow, container: WavContainer): Pro
   const chunks: ScannedChunk[] = [];
   const warnings: Warning[] = [];
   let wideSizes: WideSizes | null = null;
-  let offset = FIRST_CHUNK;
+  let next = FIRST_CHUNK;
   while (chunks.length < MOST_CHUNKS) {
-    const head = await readHead(file, offset);
+    const head = await readHead(file, next);
     if (head === null || !isName(head.id)) {
       break;
     }
-    const content = offset + HEAD_BYTES;
-    const left = file.sizeBytes - content;
-    let declaredBytes = head.declaredBytes;
-    if (declaredBytes === SIZE_ELSEWHERE && wideSizes !== null) {
-      declaredBytes =
-        (head.id === 'data' ? wideSizes.dataBytes : wideSizes.table.get(head.id)) ?? declaredBytes;
-    }
-    const isOpenEnded =
-      head.id === 'data' && declaredBytes === 0 && !(await isFollowedByChunk(file, content));
-    const sizeBytes = isOpenEnded ? left : Math.min(declaredBytes, left);
-    chunks.push({ id: head.id, offset: content, sizeBytes, declaredBytes });
+    const offset = next + HEAD_BYTES;
+    const left = file.sizeBytes - offset;
+    const declaredBytes = claimedBytes(head, wideSizes);
+    const isUnset = head.id === 'data' && declaredBytes === 0 && !(await isFollowedByChunk(file, offset));
+    const sizeBytes = isUnset ? left : Math.min(declaredBytes, left);
+    chunks.push({ id: head.id, offset, sizeBytes, declaredBytes });
     if (container !== 'RIFF' && head.id === 'ds64' && wideSizes === null) {
-      wideSizes = readWideSizes(await file.peek(content, Math.min(sizeBytes, DS64_MOST_BYTES)));
+      wideSizes = readWideSizes(await file.peek(offset, Math.min(sizeBytes, DS64_MOST_BYTES)));
     }
-    const end = content + sizeBytes;
-    offset = sizeBytes % 2 === 1 ? await skipPad(file, end) : end;
-    if (sizeBytes % 2 === 1 && offset === end && end < file.sizeBytes) {
-      warnings.push(makeWarning('pad-byte-missing', { chunk: `"${head.id}"`, offset: content - HEAD_BYTES }));
+    const end = offset + sizeBytes;
+    next = sizeBytes % 2 === 1 ? await skipPad(file, end) : end;
+    if (sizeBytes % 2 === 1 && next === end) {
+      warnings.push(makeWarning('pad-byte-missing', { chunk: `"${head.id}"`, offset: offset - HEAD_BYTES }));
     }
   }
-  const endOffset = Math.min(offset, file.sizeBytes);
+  const endOffset = Math.min(next, file.sizeBytes);
   const hasTooMany = chunks.length === MOST_CHUNKS && endOffset < file.sizeBytes;
-  if (hasTooMany) {
-    warnings.push(makeWarning('too-many-chunks', { count: MOST_CHUNKS, offset: endOffset }));
-  } else if (endOffset < file.sizeBytes) {
-    const present = byteCount(file.sizeBytes - endOffset);
-    warnings.push(makeWarning('trailing-bytes', { offset: endOffset, present }));
-  }
-  for (const chunk of chunks.filter(({ id }) => id !== 'data')) {
-    if (chunk.declaredBytes > chunk.sizeBytes) {
-      warnings.push(
-        makeWarning('chunk-cut-short', {
-          chunk: `"${chunk.id}"`,
-          offset: chunk.offset - HEAD_BYTES,
-          declared: byteCount(chunk.declaredBytes),
-          present: byteCount(chunk.sizeBytes),
-        }),
-      );
-    }
-  }
+  warnings.push(...warnOfUnread(chunks, endOffset, file));
   return { chunks, wideSizes, warnings, endOffset, hasTooMany };
 }
 
