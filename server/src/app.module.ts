@@ -6,6 +6,14 @@ import { EnvModule } from './config/env.module';
 import type { Env } from './config/env.schema';
 import { DatabaseModule } from './database/database.module';
 import { HealthModule } from './health/health.module';
+import { CapturesModule } from './captures/captures.module';
+import { EventsModule } from './events/events.module';
+import { JobsModule } from './jobs/jobs.module';
+import { RecordsModule } from './records/records.module';
+import { RigsModule } from './rigs/rigs.module';
+import { StorageModule } from './storage/storage.module';
+import { TodayModule } from './today/today.module';
+import { UnitsModule } from './units/units.module';
 
 /** The HTTP process. Feature modules are listed one a line. */
 @Module({})
@@ -19,6 +27,14 @@ export class AppModule {
         ShutdownModule,
         DatabaseModule,
         HealthModule,
+        StorageModule,
+        UnitsModule,
+        RigsModule,
+        JobsModule,
+        CapturesModule,
+        RecordsModule,
+        EventsModule,
+        TodayModule,
       ],
     };
   }

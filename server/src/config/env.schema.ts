@@ -2,6 +2,7 @@ import { existsSync } from 'node:fs';
 import { isIP } from 'node:net';
 import { resolve } from 'node:path';
 import { z } from 'zod';
+import { jobsEnvShape, storageEnvShape } from './storage-env';
 
 /** Stands in `.env.example`; a production server refuses to start with it. */
 export const EXAMPLE_SECRET = 'replace-this-with-the-output-of-openssl-rand-hex-32';
@@ -71,6 +72,8 @@ export const envSchema = z
     MAIL_FROM: z.email().default('bench@localhost.localdomain'),
 
     MAX_UPLOAD_BYTES: positiveInteger(1_073_741_824),
+    ...storageEnvShape,
+    ...jobsEnvShape,
   })
   .superRefine((env, context) => {
     const refuse = (path: string, message: string) =>

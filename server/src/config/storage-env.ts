@@ -8,9 +8,9 @@ const positiveInteger = (fallback: number) => z.coerce.number().int().positive()
 export const storageEnvShape = {
   STORAGE_KIND: z.enum(['folder', 's3']).default('folder'),
   /** The folder store itself; with S3 the place of files that are still arriving. */
-  STORAGE_DIR: z
+  STORE_DIR: z
     .string()
-    .default(resolve(__dirname, '../../../.run/storage'))
+    .default(resolve(__dirname, '../../../.run/store'))
     .transform((path) => resolve(path)),
   /** An upload that would leave less than this free is refused. */
   STORAGE_MIN_FREE_BYTES: z.coerce.number().int().min(0).default(268_435_456),

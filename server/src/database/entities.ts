@@ -8,9 +8,11 @@ import { Invitation } from '../invitations/invitation.entity';
 import { MailMessage } from '../mail/mail-message.entity';
 import { PersonRole } from '../people/person-role.entity';
 import { Person } from '../people/person.entity';
+import { archiveEntities } from './archive-entities';
 
 /** Every entity of the server; migrations must describe exactly these. */
 export const entities = [
+  ...archiveEntities,
   ApiToken,
   Attempt,
   AuditEntry,

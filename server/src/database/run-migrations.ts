@@ -1,3 +1,4 @@
+import { migrateQueue } from '../jobs/migrate-queue';
 import { createDataSource, type DatabaseEnv } from './data-source';
 import { migrations } from './migrations';
 
@@ -24,6 +25,7 @@ export async function runMigrations(env: DatabaseEnv): Promise<string[]> {
   try {
     await lock.query('SELECT pg_advisory_lock($1)', [MIGRATION_LOCK]);
     const done = await dataSource.runMigrations();
+    await migrateQueue(env.DATABASE_URL);
     const stored = (await lock.query('SELECT name FROM migration ORDER BY id')) as { name: string }[];
     const known = new Set(migrations.map((migration) => migration.name));
     const unknown = stored.find(({ name }) => !known.has(name));

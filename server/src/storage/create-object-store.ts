@@ -6,7 +6,7 @@ import { S3Store } from './s3-store';
 
 /** The store that the configuration asks for; not opened yet. */
 export function createObjectStore(env: Env): ObjectStore {
-  if (env.STORAGE_KIND === 'folder') return new FolderStore(env.STORAGE_DIR);
+  if (env.STORAGE_KIND === 'folder') return new FolderStore(env.STORE_DIR);
   if (!env.S3_BUCKET) throw new Error('S3_BUCKET must be set when STORAGE_KIND is s3');
   return new S3Store({
     endpoint: env.S3_ENDPOINT,
@@ -16,6 +16,6 @@ export function createObjectStore(env: Env): ObjectStore {
     accessKeyId: env.S3_ACCESS_KEY_ID,
     secretAccessKey: env.S3_SECRET_ACCESS_KEY,
     forcePathStyle: env.S3_FORCE_PATH_STYLE,
-    tempFolder: join(env.STORAGE_DIR, 'incoming'),
+    tempFolder: join(env.STORE_DIR, 'incoming'),
   });
 }

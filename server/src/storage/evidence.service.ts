@@ -42,7 +42,8 @@ export class EvidenceService {
     const evidence = await this.check(sha256);
     if (evidence === 'damaged') {
       throw new AppError('EVIDENCE_DAMAGED', {
-        detail: 'The stored bytes no longer have the SHA-256 they were stored under, so they are not handed out.',
+        detail:
+          'The stored bytes no longer have the SHA-256 they were stored under, so they are not handed out.',
         remedy: 'Upload the original file again: equal bytes restore it.',
       });
     }
@@ -62,7 +63,8 @@ export class EvidenceService {
       [sha256, evidence],
     );
     const before = rows[0][0]?.before;
-    if (before === 'sound' && evidence !== 'sound') this.#logger.error(`stored object ${sha256} is ${evidence}`);
+    if (before === 'sound' && evidence !== 'sound')
+      this.#logger.error(`stored object ${sha256} is ${evidence}`);
   }
 
   private async compare(sha256: string): Promise<Evidence> {

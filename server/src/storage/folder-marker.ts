@@ -22,10 +22,14 @@ export async function writeMarker(root: string, name: string, mayCreate: boolean
   const names = await readNames(root);
   if (names?.includes(name)) return;
   if (!mayCreate) {
-    throw new StorageNotReadyError('the storage folder has no marker file, yet captures are stored: is the disk mounted?');
+    throw new StorageNotReadyError(
+      'the storage folder has no marker file, yet captures are stored: is the disk mounted?',
+    );
   }
   if (names && names.length > 0) {
-    throw new StorageNotReadyError('the storage folder holds other things and no marker file: nothing was written');
+    throw new StorageNotReadyError(
+      'the storage folder holds other things and no marker file: nothing was written',
+    );
   }
   await mkdir(root, { recursive: true, mode: 0o700 });
   const handle = await open(join(root, name), 'w', 0o600);

@@ -9,6 +9,7 @@ export const bigintAsNumber = { from: (value: string) => Number(value), to: (val
 /** Bytes in the object store that something refers to: a capture's file or a record's trace. */
 @Entity('stored_object')
 @Index('ix_stored_object_checked_at', ['checkedAt', 'sha256'])
+@Index('ix_stored_object_unsound', ['evidence'], { where: `evidence <> 'sound'` })
 @Check('ck_stored_object_evidence', `evidence IN ('sound', 'damaged', 'missing')`)
 @Check('ck_stored_object_kind', `kind IN ('capture', 'trace')`)
 export class StoredObject {

@@ -1,0 +1,15 @@
+import { Module } from '@nestjs/common';
+import { JobsModule } from '../jobs/jobs.module';
+import { CaptureFilesController } from './capture-files.controller';
+import { CaptureListService } from './capture-list.service';
+import { CapturesController } from './captures.controller';
+import { CapturesService } from './captures.service';
+import { FilingService } from './filing.service';
+
+@Module({
+  imports: [JobsModule],
+  controllers: [CapturesController, CaptureFilesController],
+  providers: [CapturesService, CaptureListService, FilingService],
+  exports: [CaptureListService],
+})
+export class CapturesModule {}

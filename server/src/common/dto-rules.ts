@@ -1,0 +1,103 @@
+import { applyDecorators } from '@nestjs/common';
+import { ApiProperty, ApiPropertyOptional } from '@nestjs/swagger';
+import { Transform, Type } from 'class-transformer';
+import {
+  IsBoolean,
+  IsInt,
+  IsOptional,
+  IsString,
+  IsUUID,
+  Length,
+  Max,
+  MaxLength,
+  Min,
+  ValidateIf,
+} from 'class-validator';
+
+/** Text of a form: outer spaces are dropped, an empty text counts as one. */
+const trimmed = () =>
+  Transform(({ value }: { value: unknown }) => (typeof value === 'string' ? value.trim() : value));
+
+/** A text that must be there. */
+export const NameField = (maxLength: number, options: { isOptional?: boolean } = {}) =>
+  applyDecorators(
+    (options.isOptional ? ApiPropertyOptional : ApiProperty)({ type: String, minLength: 1, maxLength }),
+    ...(options.isOptional ? [IsOptional()] : []),
+    trimmed(),
+    IsString(),
+    Length(1, maxLength),
+  );
+
+/** A text that may be left out or be empty. */
+export const NotesField = (maxLength = 10_000) =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, maxLength }),
+    IsOptional(),
+    trimmed(),
+    IsString(),
+    MaxLength(maxLength),
+  );
+
+/** A text that may be left out, or null to clear it. */
+export const ClearableNameField = (maxLength: number) =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, nullable: true, minLength: 1, maxLength }),
+    trimmed(),
+    ValidateIf((_, value) => value !== undefined && value !== null),
+    IsString(),
+    Length(1, maxLength),
+  );
+
+/** The id of another thing, which may be left out, or null to clear it. */
+export const ClearableIdField = () =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, format: 'uuid', nullable: true }),
+    ValidateIf((_, value) => value !== undefined && value !== null),
+    IsUUID(),
+  );
+
+/** An id in a query or in a multipart form, where an empty field means none. */
+export const FormIdField = () =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, format: 'uuid' }),
+    Transform(({ value }: { value: unknown }) => (value === '' ? undefined : value)),
+    IsOptional(),
+    IsUUID(),
+  );
+
+/** `true` or `false` in a query. */
+export const FlagQuery = (description: string) =>
+  applyDecorators(
+    ApiPropertyOptional({ type: Boolean, description }),
+    IsOptional(),
+    Transform(({ value }: { value: unknown }) =>
+      value === 'true' ? true : value === 'false' ? false : value,
+    ),
+    IsBoolean(),
+  );
+
+export const PAGE_LENGTH_MAX = 200;
+
+/** How many items a page of a list holds. */
+export const LimitQuery = (fallback: number) =>
+  applyDecorators(
+    ApiPropertyOptional({ type: Number, minimum: 1, maximum: PAGE_LENGTH_MAX, default: fallback }),
+    IsOptional(),
+    Type(() => Number),
+    IsInt(),
+    Min(1),
+    Max(PAGE_LENGTH_MAX),
+  );
+
+/** What the page before gave as `nextCursor`. */
+export const CursorQuery = () =>
+  applyDecorators(ApiPropertyOptional({ type: String }), IsOptional(), IsString(), MaxLength(2_000));
+
+/** Words to look for. */
+export const SearchQuery = () =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, maxLength: 200 }),
+    IsOptional(),
+    IsString(),
+    MaxLength(200),
+  );

@@ -1,0 +1,95 @@
+import { Inject, Injectable, Logger as NestLogger } from '@nestjs/common';
+import { Logger, parseCronItems, run, type LogLevel, type Runner, type WorkerEvents } from 'graphile-worker';
+import { EventEmitter } from 'node:events';
+import { Pool } from 'pg';
+import { z } from 'zod';
+import { ENV } from '../config/env.module';
+import type { Env } from '../config/env.schema';
+import { SweepService } from '../storage/sweep.service';
+import { AnalysisTask } from './analysis.task';
+import { Heartbeat } from './heartbeat.service';
+import { ANALYSE_TASK } from './job-queue';
+
+const payloadSchema = z.object({ jobId: z.uuid() });
+const POLL_MS = 2_000;
+
+/** Runs the queue in this process: analyses, the scheduled check of all evidence, and the sweep. */
+@Injectable()
+export class WorkerRunner {
+  readonly #logger = new NestLogger('Worker');
+  readonly #ending = new AbortController();
+  #runner: Runner | null = null;
+  #pool: Pool | null = null;
+  #workerId = '';
+
+  constructor(
+    private readonly analysis: AnalysisTask,
+    private readonly heartbeat: Heartbeat,
+    private readonly sweep: SweepService,
+    @Inject(ENV) private readonly env: Env,
+  ) {}
+
+  async start(): Promise<void> {
+    const events = new EventEmitter() as WorkerEvents;
+    events.on('pool:create', ({ workerPool }) => (this.#workerId = workerPool.id));
+    const pool = new Pool({
+      connectionString: this.env.DATABASE_URL,
+      max: this.env.WORKER_CONCURRENCY + 3,
+      application_name: 'benchlark-queue',
+      connectionTimeoutMillis: 3_000,
+    });
+    pool.on('error', (error) => this.#logger.warn(`the queue's connection was lost: ${error.message}`));
+    this.#pool = pool;
+    this.#runner = await run({
+      pgPool: pool,
+      concurrency: this.env.WORKER_CONCURRENCY,
+      pollInterval: POLL_MS,
+      noHandleSignals: true,
+      events,
+      logger: new Logger(() => (level, message) => this.log(level, message)),
+      parsedCronItems: parseCronItems([
+        {
+          task: 'check-evidence',
+          match: this.env.EVIDENCE_CRON,
+          options: { backfillPeriod: 0, maxAttempts: 1 },
+        },
+        { task: 'sweep-storage', match: this.env.SWEEP_CRON, options: { backfillPeriod: 0, maxAttempts: 1 } },
+      ]),
+      taskList: {
+        [ANALYSE_TASK]: async (payload) => {
+          const { jobId } = payloadSchema.parse(payload);
+          await this.analysis.run(jobId, this.#workerId, this.#ending.signal);
+        },
+        'check-evidence': async () => {
+          const counts = await this.sweep.checkAll(this.#ending.signal);
+          this.#logger.log({ ...counts, msg: 'checked every stored object against its hash' });
+        },
+        'sweep-storage': async () => {
+          const report = await this.sweep.sweep({ removesOrphans: this.env.SWEEP_REMOVES_ORPHANS });
+          this.#logger.log({ ...report, orphans: report.orphans.length, msg: 'swept the storage' });
+        },
+      },
+    });
+    await this.heartbeat.start(this.#workerId);
+    this.#logger.log(`worker ${this.#workerId} takes ${this.env.WORKER_CONCURRENCY} job(s) at a time`);
+  }
+
+  /** Resolves when the queue ended by itself, which it does not do as long as all is well. */
+  async ended(): Promise<void> {
+    await this.#runner?.promise;
+  }
+
+  /** Ends running analyses, hands their jobs back, then ends the queue. */
+  async stop(): Promise<void> {
+    this.#ending.abort();
+    await this.#runner?.stop();
+    await this.heartbeat.stop(this.#workerId);
+    await this.#pool?.end();
+  }
+
+  private log(level: LogLevel, message: string): void {
+    if (level === 'error') this.#logger.error(message);
+    else if (level === 'warning') this.#logger.warn(message);
+    else this.#logger.debug(message);
+  }
+}

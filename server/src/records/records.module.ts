@@ -1,0 +1,12 @@
+import { Module } from '@nestjs/common';
+import { JobsModule } from '../jobs/jobs.module';
+import { RecordsController } from './records.controller';
+import { RecordsService } from './records.service';
+import { VerificationService } from './verification.service';
+
+@Module({
+  imports: [JobsModule],
+  controllers: [RecordsController],
+  providers: [RecordsService, VerificationService],
+})
+export class RecordsModule {}
