@@ -1,4 +1,4 @@
-import { Column, Entity, JoinColumn, OneToOne, PrimaryColumn } from 'typeorm';
+import { Column, Entity, JoinColumn, OneToOne, PrimaryColumn, type Relation } from 'typeorm';
 import { StoredObject } from '../storage/stored-object.entity';
 
 /** The wave's outline: least and greatest sample of each run of frames. */
@@ -14,7 +14,7 @@ export class CaptureOverview {
 
   @OneToOne(() => StoredObject)
   @JoinColumn({ name: 'sha256', foreignKeyConstraintName: 'fk_capture_overview_object' })
-  object?: StoredObject;
+  object?: Relation<StoredObject>;
 
   @Column({ name: 'content', type: 'json' })
   content!: Overview;

@@ -1,4 +1,15 @@
-import { Check, Column, Entity, Index, JoinColumn, ManyToOne, PrimaryGeneratedColumn, Unique } from 'typeorm';
+import {
+  Check,
+  Column,
+  Entity,
+  Generated,
+  Index,
+  JoinColumn,
+  ManyToOne,
+  PrimaryGeneratedColumn,
+  Unique,
+  type Relation,
+} from 'typeorm';
 import { AnalysisJob } from '../jobs/analysis-job.entity';
 import { Person } from '../people/person.entity';
 import { BenchRecordRow } from '../records/record.entity';
@@ -40,7 +51,8 @@ export class Capture {
   @PrimaryGeneratedColumn('uuid', { primaryKeyConstraintName: 'pk_capture' })
   readonly id!: string;
 
-  @Column({ name: 'number', type: 'integer', default: () => `nextval('capture_number_seq')` })
+  @Column({ name: 'number', type: 'integer' })
+  @Generated('increment')
   readonly number!: number;
 
   @Column({ name: 'file_name', type: 'text' })
@@ -121,29 +133,29 @@ export class Capture {
 
   @ManyToOne(() => StoredObject)
   @JoinColumn({ name: 'sha256', foreignKeyConstraintName: 'fk_capture_object' })
-  object?: StoredObject;
+  object?: Relation<StoredObject>;
 
   @ManyToOne(() => Person)
   @JoinColumn({ name: 'uploaded_by', foreignKeyConstraintName: 'fk_capture_person' })
-  uploadedBy?: Person;
+  uploadedBy?: Relation<Person>;
 
   @ManyToOne(() => Unit, { nullable: true })
   @JoinColumn({ name: 'unit_id', foreignKeyConstraintName: 'fk_capture_unit' })
-  unit?: Unit | null;
+  unit?: Relation<Unit> | null;
 
   @ManyToOne(() => UnitCondition, { nullable: true })
   @JoinColumn({ name: 'condition_id', foreignKeyConstraintName: 'fk_capture_condition' })
-  condition?: UnitCondition | null;
+  condition?: Relation<UnitCondition> | null;
 
   @ManyToOne(() => Rig, { nullable: true })
   @JoinColumn({ name: 'rig_id', foreignKeyConstraintName: 'fk_capture_rig' })
-  rig?: Rig | null;
+  rig?: Relation<Rig> | null;
 
   @ManyToOne(() => AnalysisJob, { nullable: true })
   @JoinColumn({ name: 'job_id', foreignKeyConstraintName: 'fk_capture_job' })
-  job?: AnalysisJob | null;
+  job?: Relation<AnalysisJob> | null;
 
   @ManyToOne(() => BenchRecordRow, { nullable: true })
   @JoinColumn({ name: 'record_id', foreignKeyConstraintName: 'fk_capture_record' })
-  record?: BenchRecordRow | null;
+  record?: Relation<BenchRecordRow> | null;
 }

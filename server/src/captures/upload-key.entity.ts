@@ -1,4 +1,4 @@
-import { Column, Entity, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
+import { Column, Entity, JoinColumn, ManyToOne, PrimaryColumn, type Relation } from 'typeorm';
 import { Person } from '../people/person.entity';
 import { Capture } from './capture.entity';
 
@@ -23,9 +23,9 @@ export class UploadKey {
 
   @ManyToOne(() => Person)
   @JoinColumn({ name: 'person_id', foreignKeyConstraintName: 'fk_upload_key_person' })
-  person?: Person;
+  person?: Relation<Person>;
 
   @ManyToOne(() => Capture)
   @JoinColumn({ name: 'capture_id', foreignKeyConstraintName: 'fk_upload_key_capture' })
-  capture?: Capture;
+  capture?: Relation<Capture>;
 }

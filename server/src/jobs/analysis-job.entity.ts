@@ -1,5 +1,15 @@
 import type { AnalysisSettings, MeasureId } from '@benchlark/dsp';
-import { Check, Column, Entity, Index, JoinColumn, ManyToOne, PrimaryGeneratedColumn, Unique } from 'typeorm';
+import {
+  Check,
+  Column,
+  Entity,
+  Index,
+  JoinColumn,
+  ManyToOne,
+  PrimaryGeneratedColumn,
+  Unique,
+  type Relation,
+} from 'typeorm';
 import { Capture } from '../captures/capture.entity';
 import { Person } from '../people/person.entity';
 
@@ -70,9 +80,9 @@ export class AnalysisJob {
 
   @ManyToOne(() => Capture)
   @JoinColumn({ name: 'capture_id', foreignKeyConstraintName: 'fk_analysis_job_capture' })
-  capture?: Capture;
+  capture?: Relation<Capture>;
 
   @ManyToOne(() => Person)
   @JoinColumn({ name: 'requested_by', foreignKeyConstraintName: 'fk_analysis_job_person' })
-  requestedBy?: Person;
+  requestedBy?: Relation<Person>;
 }

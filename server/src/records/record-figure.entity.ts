@@ -1,4 +1,4 @@
-import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
+import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn, type Relation } from 'typeorm';
 import { BenchRecordRow } from './record.entity';
 
 /** One figure of a record as a row, for search and comparison. Segment 0 is the record itself. */
@@ -35,5 +35,5 @@ export class RecordFigure {
 
   @ManyToOne(() => BenchRecordRow)
   @JoinColumn({ name: 'record_id', foreignKeyConstraintName: 'fk_record_figure_record' })
-  record?: BenchRecordRow;
+  record?: Relation<BenchRecordRow>;
 }

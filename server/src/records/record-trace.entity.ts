@@ -1,4 +1,4 @@
-import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn } from 'typeorm';
+import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn, type Relation } from 'typeorm';
 import { StoredObject } from '../storage/stored-object.entity';
 import { BenchRecordRow } from './record.entity';
 
@@ -32,9 +32,9 @@ export class RecordTrace {
 
   @ManyToOne(() => BenchRecordRow)
   @JoinColumn({ name: 'record_id', foreignKeyConstraintName: 'fk_record_trace_record' })
-  record?: BenchRecordRow;
+  record?: Relation<BenchRecordRow>;
 
   @ManyToOne(() => StoredObject)
   @JoinColumn({ name: 'sha256', foreignKeyConstraintName: 'fk_record_trace_object' })
-  object?: StoredObject;
+  object?: Relation<StoredObject>;
 }

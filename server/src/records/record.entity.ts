@@ -1,5 +1,14 @@
 import type { AnalysisSettings } from '@benchlark/dsp';
-import { Column, Entity, JoinColumn, ManyToOne, OneToOne, PrimaryGeneratedColumn, Unique } from 'typeorm';
+import {
+  Column,
+  Entity,
+  JoinColumn,
+  ManyToOne,
+  OneToOne,
+  PrimaryGeneratedColumn,
+  Unique,
+  type Relation,
+} from 'typeorm';
 import { Capture } from '../captures/capture.entity';
 import { AnalysisJob } from '../jobs/analysis-job.entity';
 
@@ -74,13 +83,13 @@ export class BenchRecordRow {
 
   @ManyToOne(() => Capture)
   @JoinColumn({ name: 'capture_id', foreignKeyConstraintName: 'fk_record_capture' })
-  capture?: Capture;
+  capture?: Relation<Capture>;
 
   @OneToOne(() => AnalysisJob)
   @JoinColumn({ name: 'job_id', foreignKeyConstraintName: 'fk_record_job' })
-  job?: AnalysisJob;
+  job?: Relation<AnalysisJob>;
 
   @OneToOne(() => BenchRecordRow, { nullable: true })
   @JoinColumn({ name: 'supersedes_id', foreignKeyConstraintName: 'fk_record_supersedes' })
-  supersedes?: BenchRecordRow | null;
+  supersedes?: Relation<BenchRecordRow> | null;
 }

@@ -1,4 +1,12 @@
-import { Column, Entity, JoinColumn, ManyToOne, PrimaryGeneratedColumn, Unique } from 'typeorm';
+import {
+  Column,
+  Entity,
+  JoinColumn,
+  ManyToOne,
+  PrimaryGeneratedColumn,
+  Unique,
+  type Relation,
+} from 'typeorm';
 import { Unit } from './unit.entity';
 
 /** The state a unit was measured in. */
@@ -13,7 +21,7 @@ export class UnitCondition {
 
   @ManyToOne(() => Unit, (unit) => unit.conditions)
   @JoinColumn({ name: 'unit_id', foreignKeyConstraintName: 'fk_unit_condition_unit' })
-  unit!: Unit;
+  unit!: Relation<Unit>;
 
   @Column({ name: 'name', type: 'text' })
   name!: string;

@@ -1,4 +1,4 @@
-import { Check, Column, Entity, Index, OneToMany, PrimaryGeneratedColumn } from 'typeorm';
+import { Check, Column, Entity, Index, OneToMany, PrimaryGeneratedColumn, type Relation } from 'typeorm';
 import { UnitCondition } from './unit-condition.entity';
 
 export const UNIT_KINDS = [
@@ -45,5 +45,5 @@ export class Unit {
   search!: string;
 
   @OneToMany(() => UnitCondition, (condition) => condition.unit)
-  conditions!: UnitCondition[];
+  conditions!: Relation<UnitCondition[]>;
 }

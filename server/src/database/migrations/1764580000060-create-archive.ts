@@ -69,10 +69,9 @@ const CAPTURES = [
     CONSTRAINT pk_capture_overview PRIMARY KEY (sha256),
     CONSTRAINT fk_capture_overview_object FOREIGN KEY (sha256) REFERENCES stored_object (sha256)
   )`,
-  `CREATE SEQUENCE capture_number_seq`,
   `CREATE TABLE capture (
     id uuid NOT NULL DEFAULT gen_random_uuid(),
-    number integer NOT NULL DEFAULT nextval('capture_number_seq'),
+    number serial NOT NULL,
     file_name text NOT NULL,
     file_name_key text NOT NULL,
     sha256 text NOT NULL,
@@ -234,22 +233,22 @@ const RECORDS = [
 ];
 
 const IMMUTABILITY = [
-  `CREATE FUNCTION refuse_change() RETURNS trigger LANGUAGE plpgsql AS $$
+  `CREATE FUNCTION refuse_archive_change() RETURNS trigger LANGUAGE plpgsql AS $$
    BEGIN
      RAISE EXCEPTION '% rows are never changed or deleted', TG_TABLE_NAME USING ERRCODE = 'restrict_violation';
    END $$`,
   ...['record', 'record_figure', 'record_trace'].flatMap((table) => [
     `CREATE TRIGGER ${table}_is_immutable BEFORE UPDATE OR DELETE ON ${table}
-     FOR EACH ROW EXECUTE FUNCTION refuse_change()`,
+     FOR EACH ROW EXECUTE FUNCTION refuse_archive_change()`,
     `CREATE TRIGGER ${table}_is_kept BEFORE TRUNCATE ON ${table}
-     FOR EACH STATEMENT EXECUTE FUNCTION refuse_change()`,
+     FOR EACH STATEMENT EXECUTE FUNCTION refuse_archive_change()`,
   ]),
   // What a capture is can't change; how it is filed and how far its analysis is may.
   `CREATE TRIGGER capture_is_immutable BEFORE UPDATE OF id, number, sha256, size_bytes, file_name, uploaded_at,
      uploaded_by, sample_rate_hz, channel_count, bits_per_sample, sample_format, frame_count, duration_s, file_warnings
-   ON capture FOR EACH ROW EXECUTE FUNCTION refuse_change()`,
+   ON capture FOR EACH ROW EXECUTE FUNCTION refuse_archive_change()`,
   `CREATE TRIGGER capture_is_kept BEFORE DELETE OR TRUNCATE ON capture
-   FOR EACH STATEMENT EXECUTE FUNCTION refuse_change()`,
+   FOR EACH STATEMENT EXECUTE FUNCTION refuse_archive_change()`,
 ];
 
 const UP = [...FILING, ...CAPTURES, ...JOBS, ...RECORDS, ...IMMUTABILITY];
@@ -257,7 +256,6 @@ const UP = [...FILING, ...CAPTURES, ...JOBS, ...RECORDS, ...IMMUTABILITY];
 const DOWN = [
   'ALTER TABLE capture DROP CONSTRAINT fk_capture_record, DROP CONSTRAINT fk_capture_job',
   'DROP TABLE record_trace, record_figure, record, analysis_job, worker, upload_key, capture',
-  'DROP SEQUENCE capture_number_seq',
   'DROP TABLE capture_overview, stored_object, rig, unit_condition, unit',
-  'DROP FUNCTION refuse_change()',
+  'DROP FUNCTION refuse_archive_change()',
 ];
