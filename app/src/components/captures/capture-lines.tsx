@@ -4,7 +4,10 @@ import type { Capture } from '@/lib/api-schema';
 import { formatHash, formatPercent } from '@/lib/format/quantity';
 
 /** The three stations after the recording, for a capture that is stored. */
-export function analysisStations(capture: Capture, analysis: Pick<Capture, 'state' | 'progress'> = capture): Station[] {
+export function analysisStations(
+  capture: Capture,
+  analysis: Pick<Capture, 'state' | 'progress'> = capture,
+): Station[] {
   const samples: Station = { name: 'samples', what: <code>{formatHash(capture.sha256)}</code> };
   switch (analysis.state) {
     case 'queued':
@@ -22,9 +25,17 @@ export function analysisStations(capture: Capture, analysis: Pick<Capture, 'stat
         record('not-yet'),
       ];
     case 'failed':
-      return [samples, { name: 'dsp', what: 'failed', node: 'broken', tone: 'fault', link: 'unchecked' }, record('not-yet')];
+      return [
+        samples,
+        { name: 'dsp', what: 'failed', node: 'broken', tone: 'fault', link: 'unchecked' },
+        record('not-yet'),
+      ];
     case 'cancelled':
-      return [samples, { name: 'dsp', what: 'cancelled', node: 'broken', link: 'unchecked' }, record('not-yet')];
+      return [
+        samples,
+        { name: 'dsp', what: 'cancelled', node: 'broken', link: 'unchecked' },
+        record('not-yet'),
+      ];
     case 'done':
       return [samples, { name: 'dsp', what: capture.record?.dspVersion ?? 'analysed' }, record('done')];
   }

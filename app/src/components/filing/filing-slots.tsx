@@ -35,7 +35,11 @@ export function FilingSlots({ units, rigs, value, onChange, onNewRig }: FilingSl
           ...units.map((item) => ({ value: item.id, label: unitName(item) })),
         ]}
         onChange={(next) =>
-          onChange({ ...value, unitId: next === NONE ? null : next, conditionId: firstCondition(units, next) })
+          onChange({
+            ...value,
+            unitId: next === NONE ? null : next,
+            conditionId: firstCondition(units, next),
+          })
         }
       />
       {unit && (

@@ -30,3 +30,9 @@ export function decimalsFor(value: number, expanded: number | null | undefined, 
   if (rule.significant !== undefined) return Math.min(most, decimalsForSignificant(value, rule.significant));
   return Math.min(most, rule.decimals ?? 1);
 }
+
+/** Decimals that tell two values a step apart from each other: 1 for 0.37, 0 for 2. */
+export function decimalsForStep(step: number): number {
+  if (!(step > 0) || !Number.isFinite(step)) return 0;
+  return Math.min(6, Math.max(0, -Math.floor(Math.log10(step))));
+}

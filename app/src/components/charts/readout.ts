@@ -1,0 +1,98 @@
+import { decimalsForStep } from '@/lib/format/digits';
+import { formatNumber, THIN_SPACE } from '@/lib/format/number';
+import { formatCount, formatOrdinal, withUnit } from '@/lib/format/quantity';
+import type { AxisModel, TraceModel } from './chart-model';
+import { lowerBound } from './decimate';
+import type { ChartScene, DrawnTrace } from './draw-context';
+
+export interface ReadoutRow {
+  readonly trace: TraceModel;
+  readonly x: number;
+  readonly y: number;
+  readonly number: string;
+  readonly unit: string;
+  /** Bins behind the point; more than one means their power mean. */
+  readonly count: number;
+}
+
+export interface Readout {
+  readonly x: number;
+  readonly title: string;
+  readonly rows: readonly ReadoutRow[];
+  /** "power mean of 23 bins", where a pixel holds more than one. */
+  readonly footnote: string | null;
+  readonly spoken: string;
+}
+
+/** Index of the drawn point nearest to x. */
+export function nearestPoint({ points }: DrawnTrace, x: number): number {
+  const after = Math.min(points.x.length - 1, lowerBound(points.x, x));
+  const before = Math.max(0, after - 1);
+  const isBefore = Math.abs((points.x[before] ?? NaN) - x) <= Math.abs((points.x[after] ?? NaN) - x);
+  return isBefore ? before : after;
+}
+
+/** The trace whose points the cursor steps through: the first one shown. */
+export function steppedTrace(scene: ChartScene): DrawnTrace | undefined {
+  return scene.drawn.find(({ trace, points }) => trace.kind !== 'wave' && points.x.length > 0);
+}
+
+function formatX(axis: AxisModel, x: number, step: number): string {
+  return withUnit(formatNumber(x, { decimals: decimalsForStep(step) }), axis.unit);
+}
+
+/** dB to a tenth; other units to a thousandth of the scale. */
+function formatY(axis: AxisModel, y: number): string {
+  const decimals = axis.unit.startsWith('dB') ? 1 : decimalsForStep((axis.max - axis.min) / 1000);
+  return formatNumber(y, { decimals, isSigned: axis.isSigned ?? false });
+}
+
+/** The harmonic whose place this is, within a pixel or two. */
+function harmonicAt({ model, scales }: ChartScene, x: number): number | null {
+  const px = scales.x.toPx(x);
+  const mark = (model.harmonics ?? []).find((candidate) => Math.abs(scales.x.toPx(candidate.x) - px) < 1.6);
+  return mark?.order ?? null;
+}
+
+/** What the cursor reads at x: the drawn point nearest to it of each shown trace. */
+export function readAt(scene: ChartScene, x: number): Readout | null {
+  const stepped = steppedTrace(scene);
+  if (!stepped) return null;
+  const index = nearestPoint(stepped, x);
+  const atX = stepped.points.x[index] ?? x;
+  const step = Math.abs((stepped.trace.x[1] ?? 1) - (stepped.trace.x[0] ?? 0));
+  const rows = scene.drawn.flatMap((drawn): ReadoutRow[] => {
+    const at = drawn === stepped ? index : nearestPoint(drawn, atX);
+    const y = drawn.points.y[at] ?? NaN;
+    if (Number.isNaN(y)) return [];
+    const unit = drawn.trace.unit ?? scene.model.y.unit;
+    const number = formatY(scene.model.y, y);
+    return [
+      {
+        trace: drawn.trace,
+        x: drawn.points.x[at] ?? atX,
+        y,
+        number,
+        unit,
+        count: drawn.points.count[at] ?? 1,
+      },
+    ];
+  });
+  const order = harmonicAt(scene, atX);
+  const place = formatX(scene.model.x, atX, step);
+  const name = order === null ? '' : order === 1 ? 'fundamental, ' : `${formatOrdinal(order)} harmonic, `;
+  const title = capitalise(name + place);
+  const count = Math.max(1, ...rows.map((row) => row.count));
+  const values = rows.map((row) => `${row.trace.name} ${withUnit(row.number, row.unit)}`);
+  return {
+    x: atX,
+    title,
+    rows,
+    footnote: count > 1 ? `power mean of ${formatCount(count)} bins` : null,
+    spoken: `${title}: ${values.join(', ')}`.replaceAll(THIN_SPACE, ''),
+  };
+}
+
+function capitalise(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
+}
