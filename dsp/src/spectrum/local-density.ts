@@ -13,7 +13,8 @@ export interface LocalDensity {
 /**
  * Median over mean of the mean of m independent exponential powers.
  *
- * @see J. C. Berg and others' series for the median of the gamma distribution (K. P. Choi, Proc. AMS 121, 1994)
+ * @see K. P. Choi, "On the medians of gamma distributions and an equation of Ramanujan", Proc. AMS 121(1), 1994 (series
+ *   from memory; agrees with chi-square quantiles)
  */
 export function medianOverMean(m: number): number {
   return 1 - 1 / (3 * m) + 8 / (405 * m * m) + 184 / (25515 * m * m * m);
