@@ -1,5 +1,4 @@
 import { DspInputError } from '../errors.js';
-import { createSplitTransform, type PackedTransform } from './split-transform.js';
 import { createStockhamPlan, runPasses } from './stockham.js';
 
 /** A plan for transforms of one length; kept by its caller, used by one at a time. */
@@ -16,11 +15,11 @@ export interface RealFft {
   transform(samples: Float64Array, re: Float64Array, im: Float64Array): void;
 }
 
-/** Complex points from which the split form is the faster one (measured). */
-const SPLIT_FROM = 16384;
+/** Transforms the complex sequence that real samples make in pairs: even ones real, odd ones imaginary. */
+type PackedTransform = (samples: Float64Array, re: Float64Array, im: Float64Array) => void;
 
-/** Transforms the packed sequence whole, between the output and one buffer of the plan's own. */
-function createWholeTransform(length: number): PackedTransform {
+/** Plans it for `length` complex points; works between the output and one buffer of its own. */
+function createPackedTransform(length: number): PackedTransform {
   const plan = createStockhamPlan(length);
   const bufferRe = new Float64Array(length);
   const bufferIm = new Float64Array(length);
@@ -77,7 +76,7 @@ export function createRealFft(length: number): RealFft {
     );
   }
   const half = length / 2;
-  const transformPacked = half >= SPLIT_FROM ? createSplitTransform(half) : createWholeTransform(half);
+  const transformPacked = createPackedTransform(half);
   const cos = new Float64Array((half >> 1) + 1);
   const sin = new Float64Array((half >> 1) + 1);
   for (let k = 0; k < cos.length; k++) {
