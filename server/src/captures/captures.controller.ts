@@ -12,7 +12,7 @@ import {
   UseInterceptors,
 } from '@nestjs/common';
 import { ApiBody, ApiConsumes, ApiCreatedResponse, ApiHeader, ApiOkResponse, ApiTags } from '@nestjs/swagger';
-import { CurrentPerson, type SignedInPerson } from '../common/actor';
+import { CurrentActor, CurrentPerson, type Actor, type SignedInPerson } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { IdPipe } from '../common/id.pipe';
 import { Roles } from '../common/roles';
@@ -59,6 +59,7 @@ export class CapturesController {
     @Req() request: UploadRequest,
     @Body() fields: UploadFieldsDto,
     @CurrentPerson() person: SignedInPerson,
+    @CurrentActor() actor: Actor,
     @Headers('idempotency-key') idempotencyKey?: string,
   ): Promise<CaptureDto> {
     const { upload: file } = request;
@@ -68,7 +69,7 @@ export class CapturesController {
         fields: { 'Idempotency-Key': ['is 1 to 200 printable characters'] },
       });
     }
-    return this.lists.get(await this.captures.archive({ file, fields, person, idempotencyKey }));
+    return this.lists.get(await this.captures.archive({ file, fields, person, actor, idempotencyKey }));
   }
 
   @Get(':id')
@@ -81,8 +82,12 @@ export class CapturesController {
   @Patch(':id')
   @Roles('technician', 'reviewer')
   @ApiOkResponse({ type: CaptureDto })
-  async updateCapture(@Param('id', IdPipe) id: string, @Body() body: FileCaptureDto): Promise<CaptureDto> {
-    await this.filing.file(id, body);
+  async updateCapture(
+    @Param('id', IdPipe) id: string,
+    @Body() body: FileCaptureDto,
+    @CurrentActor() actor: Actor,
+  ): Promise<CaptureDto> {
+    await this.filing.file(id, body, actor);
     return this.lists.get(id);
   }
 }

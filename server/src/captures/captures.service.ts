@@ -2,7 +2,8 @@ import { createHash } from 'node:crypto';
 import { Injectable } from '@nestjs/common';
 import type { CaptureFacts } from '@benchlark/dsp';
 import { DataSource, type EntityManager } from 'typeorm';
-import type { SignedInPerson } from '../common/actor';
+import { AuditService } from '../audit/audit.service';
+import type { Actor, SignedInPerson } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { isUniqueViolation } from '../database/database-errors';
 import { AnalysisRequests } from '../jobs/analysis-requests.service';
@@ -23,6 +24,8 @@ export interface Upload {
   readonly file: ReceivedUpload;
   readonly fields: UploadFieldsDto;
   readonly person: SignedInPerson;
+  /** Null or left out: the program itself, at seed time. */
+  readonly actor?: Actor | null;
   readonly idempotencyKey: string | undefined;
 }
 
@@ -33,6 +36,7 @@ export class CapturesService {
     private readonly dataSource: DataSource,
     private readonly store: ObjectStore,
     private readonly requests: AnalysisRequests,
+    private readonly audit: AuditService,
   ) {}
 
   /**
@@ -73,7 +77,7 @@ export class CapturesService {
 
   private async enter(
     tx: EntityManager,
-    { file, fields, person }: Upload,
+    { file, fields, person, actor = null }: Upload,
     facts: CaptureFacts,
     fileWarnings: FileWarning[],
   ): Promise<string> {
@@ -109,6 +113,12 @@ export class CapturesService {
       requestedById: person.id,
       priority: PRIORITY.upload,
     });
+    const fact = {
+      action: 'capture.stored',
+      subject: `capture:${captureId}`,
+      detail: `${fileName}, SHA-256 ${sha256}`,
+    };
+    await this.audit.record(actor, fact, tx);
     return captureId;
   }
 

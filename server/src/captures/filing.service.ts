@@ -1,5 +1,7 @@
 import { Injectable } from '@nestjs/common';
 import { DataSource, type EntityManager } from 'typeorm';
+import { AuditService } from '../audit/audit.service';
+import type { Actor } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { Rig } from '../rigs/rig.entity';
 import { UnitCondition } from '../units/unit-condition.entity';
@@ -17,9 +19,12 @@ export interface Filing {
 /** Under which unit, condition and rig a capture stands. */
 @Injectable()
 export class FilingService {
-  constructor(private readonly dataSource: DataSource) {}
+  constructor(
+    private readonly dataSource: DataSource,
+    private readonly audit: AuditService,
+  ) {}
 
-  async file(captureId: string, changes: FileCaptureDto): Promise<void> {
+  async file(captureId: string, changes: FileCaptureDto, actor: Actor): Promise<void> {
     await this.dataSource.transaction(async (tx) => {
       const capture = await tx.findOne(Capture, {
         where: { id: captureId },
@@ -41,6 +46,14 @@ export class FilingService {
       });
       await tx.update(Capture, { id: captureId }, { ...filing, note: changes.note ?? capture.note });
       await refreshFiling(tx, 'id', captureId);
+      const detail = Object.keys(changes)
+        .filter((key) => changes[key as keyof FileCaptureDto] !== undefined)
+        .join(', ');
+      await this.audit.record(
+        actor,
+        { action: 'capture.filed', subject: `capture:${captureId}`, detail },
+        tx,
+      );
     });
   }
 }

@@ -1,5 +1,5 @@
 import { Inject, Injectable, Logger as NestLogger } from '@nestjs/common';
-import { Logger, parseCronItems, run, type LogLevel, type Runner, type WorkerEvents } from 'graphile-worker';
+import { Logger, parseCronItems, run, type Runner, type WorkerEvents } from 'graphile-worker';
 import { EventEmitter } from 'node:events';
 import { Pool } from 'pg';
 import { z } from 'zod';
@@ -87,7 +87,7 @@ export class WorkerRunner {
     await this.#pool?.end();
   }
 
-  private log(level: LogLevel, message: string): void {
+  private log(level: string, message: string): void {
     if (level === 'error') this.#logger.error(message);
     else if (level === 'warning') this.#logger.warn(message);
     else this.#logger.debug(message);

@@ -9,7 +9,7 @@ import {
 import { toRecordJson } from '@benchlark/dsp';
 import { IsIn, IsOptional } from 'class-validator';
 import type { Request, Response } from 'express';
-import { CurrentPerson, type SignedInPerson } from '../common/actor';
+import { CurrentActor, CurrentPerson, type Actor, type SignedInPerson } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { IdPipe } from '../common/id.pipe';
 import { Roles } from '../common/roles';
@@ -52,9 +52,10 @@ export class RecordsController {
   requestRecord(
     @Param('id', IdPipe) id: string,
     @Body() body: RequestRecordDto,
+    @CurrentActor() actor: Actor,
     @CurrentPerson() person: SignedInPerson,
   ): Promise<RequestedRecordDto> {
-    return this.records.request(id, body, person);
+    return this.records.request(id, body, { ...actor, person });
   }
 
   @Get('records/:id')

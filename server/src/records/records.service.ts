@@ -2,7 +2,8 @@ import { buffer } from 'node:stream/consumers';
 import { Injectable } from '@nestjs/common';
 import type { AnalysisSettings, BenchRecord, Trace } from '@benchlark/dsp';
 import { DataSource } from 'typeorm';
-import type { SignedInPerson } from '../common/actor';
+import { AuditService } from '../audit/audit.service';
+import type { Actor, SignedInPerson } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { Capture } from '../captures/capture.entity';
 import { AnalysisRequests } from '../jobs/analysis-requests.service';
@@ -31,6 +32,7 @@ export class RecordsService {
     private readonly requests: AnalysisRequests,
     private readonly evidence: EvidenceService,
     private readonly store: ObjectStore,
+    private readonly audit: AuditService,
   ) {}
 
   /** The records of a capture, newest first. */
@@ -47,7 +49,7 @@ export class RecordsService {
   async request(
     captureId: string,
     wanted: RequestRecordDto,
-    person: SignedInPerson,
+    actor: Actor & { person: SignedInPerson },
   ): Promise<RequestedRecordDto> {
     const { measure = null, ...given } = wanted;
     const { fromS, toS, bandLowHz, bandHighHz } = given;
@@ -60,15 +62,23 @@ export class RecordsService {
     if (fromS !== undefined && fromS >= capture.durationS)
       refuse('fromS', 'lies beyond the end of the recording');
     const settings = Object.fromEntries(Object.entries(given).filter(([, value]) => value !== undefined));
-    return this.dataSource.transaction((tx) =>
-      this.requests.request(tx, {
+    return this.dataSource.transaction(async (tx) => {
+      const asked = {
         captureId,
         measure,
         settings,
-        requestedById: person.id,
+        requestedById: actor.person.id,
         priority: PRIORITY.onDemand,
-      }),
-    );
+      };
+      const requested = await this.requests.request(tx, asked);
+      const fact = {
+        action: 'analysis.requested',
+        subject: `capture:${captureId}`,
+        detail: JSON.stringify(wanted),
+      };
+      if (requested.isNew) await this.audit.record(actor, fact, tx);
+      return requested;
+    });
   }
 
   async get(id: string): Promise<RecordDto> {

@@ -97,7 +97,7 @@ export class UnitsService {
   }
 }
 
-function toUnitDto({ search: _, ...row }: UnitRow): UnitDto {
+function toUnitDto(row: UnitRow): UnitDto {
   const { id, maker, model, serialNumber, kind, notes, captureCount, conditions } = row;
   return {
     id,

@@ -67,7 +67,7 @@ const CalendarDate = () => [
 ];
 
 function StartedOnField(): PropertyDecorator {
-  return (target, key) => CalendarDate().forEach((decorate) => decorate(target, key as string));
+  return (target, key) => CalendarDate().forEach((decorate) => decorate(target, key));
 }
 
 export class CreateConditionDto {
