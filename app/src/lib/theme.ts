@@ -9,6 +9,8 @@ const STORAGE_KEY = 'benchlark.theme';
 const DARK_QUERY = '(prefers-color-scheme: dark)';
 const listeners = new Set<() => void>();
 let chosen: ThemeChoice = readStoredChoice();
+/** Paper is light: while a page is printed the theme is too. */
+let isPrinting = false;
 
 function readStoredChoice(): ThemeChoice {
   try {
@@ -20,6 +22,7 @@ function readStoredChoice(): ThemeChoice {
 }
 
 function resolveAppearance(choice: ThemeChoice): Appearance {
+  if (isPrinting) return 'light';
   if (choice !== 'system') return choice;
   return matchMedia(DARK_QUERY).matches ? 'dark' : 'light';
 }
@@ -49,11 +52,23 @@ function subscribe(listener: () => void): () => void {
     chosen = readStoredChoice();
     apply();
   };
+  const onBeforePrint = () => {
+    isPrinting = true;
+    apply();
+  };
+  const onAfterPrint = () => {
+    isPrinting = false;
+    apply();
+  };
   listeners.add(listener);
+  window.addEventListener('beforeprint', onBeforePrint);
+  window.addEventListener('afterprint', onAfterPrint);
   system.addEventListener('change', apply);
   window.addEventListener('storage', onStorage);
   return () => {
     listeners.delete(listener);
+    window.removeEventListener('beforeprint', onBeforePrint);
+    window.removeEventListener('afterprint', onAfterPrint);
     system.removeEventListener('change', apply);
     window.removeEventListener('storage', onStorage);
   };

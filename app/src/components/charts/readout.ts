@@ -19,7 +19,7 @@ export interface Readout {
   readonly x: number;
   readonly title: string;
   readonly rows: readonly ReadoutRow[];
-  /** "power mean of 23 bins", where a pixel holds more than one. */
+  /** "up to 23 bins averaged", where a pixel holds more than one (their power mean; lines keep their height). */
   readonly footnote: string | null;
   readonly spoken: string;
 }
@@ -88,7 +88,7 @@ export function readAt(scene: ChartScene, x: number): Readout | null {
     x: atX,
     title,
     rows,
-    footnote: count > 1 ? `power mean of ${formatCount(count)} bins` : null,
+    footnote: count > 1 ? `up to ${formatCount(count)} bins averaged` : null,
     spoken: `${title}: ${values.join(', ')}`.replaceAll(THIN_SPACE, ''),
   };
 }

@@ -9,7 +9,7 @@ export function decimalsForUncertainty(expanded: number): number {
   const exponent = Math.floor(Math.log10(expanded));
   const leading = Math.round((expanded / 10 ** exponent) * 100);
   // 0.95 and more is written 1.0, which is two digits at the same decimal as one digit of 0.94.
-  return leading <= 354 ? 1 - exponent : -exponent;
+  return (leading <= 354 ? 1 : 0) - exponent;
 }
 
 export interface DigitRule {
