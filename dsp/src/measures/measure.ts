@@ -1,4 +1,4 @@
-import type { BenchRecord, Calibration, MeasureId } from '../record/record.js';
+import type { BenchRecord, Calibration, MeasureId, Warning } from '../record/record.js';
 import type { CaptureFacts, SampleSource } from '../source/sample-source.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 
@@ -16,6 +16,8 @@ export interface AnalysisSettings {
 
 export interface AnalysisContext {
   readonly capture: CaptureFacts;
+  /** What the reader had to say of the file; it comes first among the record's warnings. */
+  readonly fileWarnings?: readonly Warning[];
   readonly descriptor?: StimulusDescriptor | null;
   /** Told the share of the work done, 0 to 1, never falling. */
   readonly onProgress?: (share: number) => void;

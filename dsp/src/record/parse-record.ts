@@ -72,6 +72,11 @@ function checkSettings(read: JsonReader, value: unknown, path: string, depth: nu
     read.number(settings[key], join(path, key));
   }
   read.text(settings['window'], join(path, 'window'));
+  if (settings['channel'] !== undefined)
+    read.oneOf(settings['channel'], ['left', 'right', 'all'], join(path, 'channel'));
+  if (settings['descriptor'] !== undefined && settings['descriptor'] !== null) {
+    read.object(settings['descriptor'], join(path, 'descriptor'));
+  }
   if (settings['calibration'] !== null) read.object(settings['calibration'], join(path, 'calibration'));
   if (settings['baseline'] !== null)
     checkRecord(read, settings['baseline'], join(path, 'baseline'), depth + 1);

@@ -1,4 +1,5 @@
 import type { CaptureFacts } from '../source/sample-source.js';
+import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import type { WarningCode } from './warning.js';
 
 export const RECORD_SCHEMA = 'benchlark-record/1';
@@ -113,9 +114,15 @@ export interface RecordSettings {
   readonly toS: number;
   readonly window: string;
   readonly fftLength: number;
+  /** Frames averaged into the spectrum. */
+  readonly averages?: number;
   readonly bandLowHz: number;
   readonly bandHighHz: number;
   readonly highestHarmonic: number;
+  /** Which channels were asked for; verifying a record asks for the same. */
+  readonly channel?: 'left' | 'right' | 'all';
+  /** The stimulus's descriptor in full, where one was given. */
+  readonly descriptor?: StimulusDescriptor | null;
   readonly calibration: Calibration | null;
   /** The record of the rig without a unit, embedded without its traces. */
   readonly baseline: BenchRecord | null;

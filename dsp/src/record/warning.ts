@@ -42,7 +42,7 @@ export const WARNING_SENTENCES = {
   'level-unexpected':
     'The tone lies at {level} dBFS, far above the -60 dBFS it is taken for: if it was played louder, the dynamic range is wrong by as much.',
   'recording-overloaded':
-    'The recording is clipped: {runs} runs of three or more samples stand at an end of the scale, the first at {at} s. Lower the recorder’s gain and record again.',
+    'The recording is clipped: {runs} runs of three or more samples stand at an end of the scale. Lower the recorder’s gain and record again.',
   'near-full-scale':
     'The recording peaks at {peak} dBFS: leave the recorder some headroom, or its own distortion may show.',
   'dc-offset':
@@ -51,7 +51,7 @@ export const WARNING_SENTENCES = {
     'The channel {channel} isn’t idle: a line at {frequency} Hz stands at {level} dBFS and is counted as noise.',
   // the frequency band
   'band-widened':
-    'The tone of {frequency} Hz lies at the end of the usual band: the band was widened to {high} Hz.',
+    'The tone of {frequency} Hz lies at the end of the usual band: the band reaches to {high} Hz.',
   'band-cut': 'At a rate of {rate} Hz the band can’t reach {asked} Hz: it ends at {high} Hz.',
   'band-near-limit':
     'The band reaches {high} Hz, more than 0.46 of the rate of {rate} Hz: the converters’ filters take part of it.',

@@ -1,0 +1,20 @@
+import { DspInputError } from '../errors.js';
+import { dynamicRangeMeasure } from './dynamic-range/dynamic-range-measure.js';
+import { idleMeasure } from './idle/idle-measure.js';
+import type { Measure } from './measure.js';
+import { toneMeasure } from './tone/tone-measure.js';
+
+/** Every measure there is. Command line, worker, server and pages find theirs here. */
+export const measures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure];
+
+/**
+ * Finds a measure by its id.
+ *
+ * @throws DspInputError `UNKNOWN_NAME`, which lists the ids there are
+ */
+export function getMeasure(id: string): Measure {
+  const measure = measures.find((entry) => entry.id === id);
+  if (measure !== undefined) return measure;
+  const known = measures.map((entry) => entry.id).join(', ');
+  throw new DspInputError('UNKNOWN_NAME', `there is no measure "${id}": there are ${known}`);
+}

@@ -1,0 +1,102 @@
+import { countEffectiveAverages } from '../../spectrum/effective-averages.js';
+import type { PowerSpectrum } from '../../spectrum/power-spectrum.js';
+import { createRealFft } from '../../spectrum/create-real-fft.js';
+import { createWindow, type CosineWindow } from '../../window/create-window.js';
+import { WINDOW_COEFFICIENTS, type WindowName } from '../../window/window-coefficients.js';
+import type { ComplexSpectrum } from './fit-line.js';
+import { createFrameWalker } from './frame-walker.js';
+import type { FramePlan } from './plan-frames.js';
+
+/** What several channels' spectra share: one window, one transform. */
+export interface SpectrumKit {
+  readonly sampleRateHz: number;
+  readonly plan: FramePlan;
+  readonly window: CosineWindow;
+  readonly transform: (samples: Float64Array, re: Float64Array, im: Float64Array) => void;
+  /** What the plan's overlapping frames are worth, as `countEffectiveAverages` gives it. */
+  readonly worth: ReturnType<typeof countEffectiveAverages>;
+}
+
+export function createSpectrumKit(
+  sampleRateHz: number,
+  plan: FramePlan,
+  windowName: WindowName,
+): SpectrumKit {
+  const window = createWindow(windowName, plan.fftLength);
+  const fft = createRealFft(plan.fftLength);
+  // Frames lie evenly spread, to a sample.
+  const hop = plan.starts.length > 1 ? plan.starts[1] : plan.fftLength;
+  const worth = countEffectiveAverages(window, plan.starts.length, hop, hop);
+  return {
+    sampleRateHz,
+    plan,
+    window,
+    transform: (samples, re, im) => fft.transform(samples, re, im),
+    worth,
+  };
+}
+
+export interface SpectrumAccumulator {
+  push(samples: Float64Array): void;
+  finish(): PowerSpectrum;
+}
+
+/**
+ * Averages one channel's power spectra while samples stream past.
+ *
+ * @param kit - shared by the channels of an analysis, used by one at a time
+ * @param onSpectrum - told each frame's transform, unscaled, its constant part taken out, and its first sample; reused arrays
+ */
+export function createSpectrumAccumulator(
+  kit: SpectrumKit,
+  onSpectrum: (spectrum: ComplexSpectrum, startSample: number) => void = () => undefined,
+): SpectrumAccumulator {
+  const { plan, window, sampleRateHz } = kit;
+  const { fftLength } = plan;
+  const half = fftLength / 2;
+  const weighted = new Float64Array(fftLength);
+  const re = new Float64Array(half + 1);
+  const im = new Float64Array(half + 1);
+  const power = new Float64Array(half + 1);
+  let averages = 0;
+  const walker = createFrameWalker(plan, (frame, index) => {
+    for (let n = 0; n < fftLength; n++) weighted[n] = frame[n] * window.samples[n];
+    kit.transform(weighted, re, im);
+    takeOutConstant(re, window.name);
+    for (let k = 0; k <= half; k++) power[k] += re[k] * re[k] + im[k] * im[k];
+    averages++;
+    onSpectrum({ re, im }, plan.starts[index]);
+  });
+  return {
+    push: (samples) => walker.push(samples),
+    finish: () => {
+      const scale = 2 / (fftLength * fftLength * window.powerGain * Math.max(1, averages));
+      const scaled = power.map((value) => value * scale);
+      scaled[half] /= 2; // half the rate stands for itself alone, every other bin for two
+      return {
+        sampleRateHz,
+        fftLength,
+        binWidthHz: sampleRateHz / fftLength,
+        windowName: window.name,
+        enbwBins: window.enbwBins,
+        exclusionHalfWidthBins: window.exclusionHalfWidthBins,
+        averages,
+        ...kit.worth,
+        power: scaled,
+      };
+    },
+  };
+}
+
+/**
+ * Takes a constant out of a frame's transform exactly, by the window's known lobe around 0 Hz: in a short record that
+ * lobe would reach into the band and hide hum and low tones.
+ */
+function takeOutConstant(re: Float64Array, windowName: WindowName): void {
+  const coefficients = WINDOW_COEFFICIENTS[windowName];
+  const constant = re[0] / coefficients[0];
+  for (let k = 1; k < coefficients.length && k < re.length; k++) {
+    re[k] -= ((k % 2 === 0 ? 1 : -1) * constant * coefficients[k]) / 2;
+  }
+  re[0] = 0;
+}
