@@ -1,0 +1,50 @@
+import AxeBuilder from '@axe-core/playwright';
+import { chromium, type Browser, type Page } from 'playwright-core';
+import { CHROMIUM, CHROMIUM_FLAGS } from '../../../server/tools/in-browser.mjs';
+
+export function openBrowser(): Promise<Browser> {
+  return chromium.launch({ executablePath: CHROMIUM, args: [...CHROMIUM_FLAGS] });
+}
+
+export interface PageOptions {
+  readonly width?: number;
+  readonly theme?: 'light' | 'dark';
+}
+
+/** A page that keeps what went wrong in it: script errors, and everything the content policy refused. */
+export async function openPage(
+  browser: Browser,
+  { width = 1440, theme = 'light' }: PageOptions = {},
+): Promise<{ page: Page; faults: string[] }> {
+  const context = await browser.newContext({
+    viewport: { width, height: width < 700 ? 844 : 940 },
+    colorScheme: theme,
+    acceptDownloads: true,
+  });
+  const page = await context.newPage();
+  const faults: string[] = [];
+  page.on('pageerror', (error) => faults.push(error.message));
+  page.on('console', (message) => {
+    if (message.type() === 'error' && /Content.Security.Policy/i.test(message.text()))
+      faults.push(message.text());
+  });
+  return { page, faults };
+}
+
+export async function signInAs(page: Page, url: string, email: string, password: string): Promise<void> {
+  await page.goto(`${url}/sign-in`);
+  await page.getByLabel('E-mail').fill(email);
+  await page.getByLabel('Password', { exact: true }).fill(password);
+  await page.getByRole('button', { name: 'Sign in', exact: true }).click();
+  await page.waitForURL((address) => !address.pathname.startsWith('/sign-in'));
+}
+
+/** What axe finds on the page as it stands, one line a finding. */
+export async function axeFindings(page: Page): Promise<string[]> {
+  const { violations } = await new AxeBuilder({ page })
+    .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+    .analyze();
+  return violations.map(
+    ({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html.slice(0, 120)).join(' | ')}`,
+  );
+}
