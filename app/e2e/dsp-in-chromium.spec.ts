@@ -1,5 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { checks } from '../../dsp/src/checks/checks';
+import { allChecks as checks } from '../../dsp/src/checks/all-checks';
 import { openInBrowserPage } from '../../server/tools/in-browser.mjs';
 import type { CheckResult } from './in-browser/in-browser.worker';
 

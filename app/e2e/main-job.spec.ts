@@ -160,5 +160,5 @@ describe('from an empty bench to a trusted record', () => {
 });
 
 function findObject(storeDir: string, sha256: string): string {
-  return path.join(storeDir, 'objects', sha256.slice(0, 2), sha256.slice(2, 4), sha256);
+  return path.join(storeDir, sha256.slice(0, 2), sha256.slice(2, 4), sha256);
 }

@@ -22,7 +22,7 @@ export async function openInBrowserPage() {
     logLevel: 'error',
     resolve: { conditions: ['source', 'module', 'browser', 'development|production'] },
     worker: { format: 'es' },
-    optimizeDeps: { include: ['comlink', 'fft.js'] },
+    optimizeDeps: { include: ['comlink'] },
     server: { host: '127.0.0.1', port: 0, fs: { allow: [ROOT] } },
   });
   await server.listen();

@@ -1,6 +1,13 @@
-import { bytesFromBlob, getMeasure, openWav, toCaptureFacts, toRecordJson } from '@benchlark/dsp';
+import {
+  analyseCapture,
+  bytesFromBlob,
+  openWav,
+  toRecordJson,
+  type BenchRecord,
+  type MeasureId,
+} from '@benchlark/dsp';
 import { expose } from 'comlink';
-import { checks } from '../../../dsp/src/checks/checks';
+import { allChecks } from '../../../dsp/src/checks/all-checks';
 
 export interface CheckResult {
   readonly id: string;
@@ -10,13 +17,12 @@ export interface CheckResult {
 const inBrowserApi = {
   async runChecks(): Promise<CheckResult[]> {
     const results: CheckResult[] = [];
-    for (const check of checks) results.push({ id: check.id, computed: await check.compute() });
+    for (const check of allChecks) results.push({ id: check.id, computed: await check.compute() });
     return results;
   },
 
-  async analyse(file: File, measure: string): Promise<string> {
-    const wav = await openWav(bytesFromBlob(file));
-    const record = await getMeasure(measure).analyse(wav, {}, { capture: toCaptureFacts(wav, '') });
+  async analyse(file: File, measure: MeasureId): Promise<BenchRecord> {
+    const { record } = await analyseCapture(await openWav(bytesFromBlob(file)), '', { measure });
     return toRecordJson(record, { traces: 'none' });
   },
 };

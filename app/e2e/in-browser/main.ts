@@ -1,3 +1,4 @@
+import type { MeasureId } from '@benchlark/dsp';
 import { wrap } from 'comlink';
 import type { InBrowserApi } from './in-browser.worker';
 
@@ -8,7 +9,7 @@ const api = wrap<InBrowserApi>(
 // What the tests call from outside.
 Object.assign(window, {
   runChecks: () => api.runChecks(),
-  analyseChosenFile: (measure: string) => {
+  analyseChosenFile: (measure: MeasureId) => {
     const file = document.querySelector<HTMLInputElement>('#file')?.files?.[0];
     if (!file) throw new Error('no file is chosen');
     return api.analyse(file, measure);
