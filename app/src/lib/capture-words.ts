@@ -22,8 +22,12 @@ const MEASURE_TITLES: Record<MeasureId, string> = {
 /** The measures a person may ask for on this page, in the order of a menu. */
 export const MEASURE_CHOICES = ['tone', 'idle', 'dynamic-range'] as const satisfies readonly MeasureId[];
 
+export function isMeasure(measure: string | null): measure is MeasureId {
+  return measure !== null && Object.hasOwn(MEASURE_TITLES, measure);
+}
+
 export function measureTitle(measure: string): string {
-  return measure in MEASURE_TITLES ? MEASURE_TITLES[measure as MeasureId] : measure.replaceAll('-', ' ');
+  return isMeasure(measure) ? MEASURE_TITLES[measure] : measure.replaceAll('-', ' ');
 }
 
 export function unitName(unit: { maker: string; model: string; serialNumber: string | null }): string {
@@ -32,7 +36,10 @@ export function unitName(unit: { maker: string; model: string; serialNumber: str
 }
 
 /** What a record says was measured: a title, and the tone where there was one. */
-export function whatWasMeasured(capture: Pick<Capture, 'record' | 'fileName'>): { title: string; detail: string } {
+export function whatWasMeasured(capture: Pick<Capture, 'record' | 'fileName'>): {
+  title: string;
+  detail: string;
+} {
   const { record } = capture;
   if (!record) return { title: 'not analysed', detail: capture.fileName };
   return { title: measureTitle(record.measure), detail: toneWords(record) ?? capture.fileName };

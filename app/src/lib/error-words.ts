@@ -9,7 +9,8 @@ export function errorWords(error: unknown): string {
   if (facts.found !== undefined) parts.push(sentence(`Found: ${facts.found}`));
   if (facts.remedy !== undefined) parts.push(sentence(facts.remedy));
   if (facts.retryAfterS !== undefined) parts.push(`Try again in ${formatCount(facts.retryAfterS)} seconds.`);
-  if (error.status >= 500 && facts.requestId !== undefined) parts.push(`The log has it as ${facts.requestId}.`);
+  if (error.status >= 500 && facts.requestId !== undefined)
+    parts.push(`The log has it as ${facts.requestId}.`);
   return parts.join(' ');
 }
 

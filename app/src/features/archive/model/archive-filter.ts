@@ -1,4 +1,6 @@
+import type { MeasureId } from '@benchlark/dsp';
 import type { CaptureListQuery } from '@/lib/api-schema';
+import { isMeasure } from '@/lib/capture-words';
 
 export const SORT_COLUMNS = [
   'uploadedAt',
@@ -21,7 +23,7 @@ export interface ArchiveFilter {
   readonly isUnsorted: boolean;
   readonly conditionId: string | null;
   readonly rigId: string | null;
-  readonly measure: string | null;
+  readonly measure: MeasureId | null;
   readonly state: (typeof STATES)[number] | null;
   readonly warnings: 'with' | 'without' | null;
   /** First and last day shown, as YYYY-MM-DD in the reader's own time zone. */
@@ -52,12 +54,13 @@ export const UNSORTED = 'none';
 /** Reads the address; what it does not understand counts as not asked for. */
 export function readFilter(params: URLSearchParams): ArchiveFilter {
   const unit = params.get('unit');
+  const measure = params.get('measure');
   return {
     unitId: unit === UNSORTED ? null : unit,
     isUnsorted: unit === UNSORTED,
     conditionId: params.get('condition'),
     rigId: params.get('rig'),
-    measure: params.get('measure'),
+    measure: isMeasure(measure) ? measure : null,
     state: oneOf(STATES, params.get('state')),
     warnings: oneOf(['with', 'without'] as const, params.get('warnings')),
     since: day(params.get('since')),

@@ -1,0 +1,1 @@
+export { AccountPage as Component } from '@/features/account/components/account-page';

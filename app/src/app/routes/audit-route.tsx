@@ -1,0 +1,1 @@
+export { AuditPage as Component } from '@/features/people/components/audit-page';

@@ -1,0 +1,1 @@
+export { MailPage as Component } from '@/features/people/components/mail-page';

@@ -1,0 +1,1 @@
+export { PeoplePage as Component } from '@/features/people/components/people-page';

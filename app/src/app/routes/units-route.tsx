@@ -1,0 +1,1 @@
+export { UnitsPage as Component } from '@/features/units/components/units-page';

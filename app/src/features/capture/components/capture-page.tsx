@@ -1,0 +1,96 @@
+import { useQuery } from '@tanstack/react-query';
+import { Link } from 'react-router-dom';
+import { Columns, Page } from '@/components/page/page';
+import { FailedState, LoadingState } from '@/components/states/states';
+import { ApiError } from '@/lib/api-error';
+import type { Capture } from '@/lib/api-schema';
+import { errorWords } from '@/lib/error-words';
+import { captureQueries } from '@/lib/queries/captures';
+import { canWriteCaptures, usePerson } from '@/lib/use-session';
+import { recordQueries } from '../api/record-queries';
+import type { ServedRecordDetail } from '../api/record-queries';
+import './capture.css';
+import { CaptureFiling } from './capture-filing';
+import { CaptureHead } from './capture-head';
+import { MethodBlock } from './method-block';
+import { NoRecord } from './no-record';
+import { ProvenanceBlock } from './provenance-block';
+import { RecordView } from './record-view';
+import { RecordsBlock } from './records-block';
+import { VerifyBlock } from './verify-block';
+import { WarningsBlock } from './warnings-block';
+
+export interface CapturePageProps {
+  captureId: string;
+  /** An older record that was asked for; the current one when null. */
+  recordId: string | null;
+}
+
+/** A capture and one of its records: what was measured, left; what it means and where it is from, right. */
+export function CapturePage({ captureId, recordId }: CapturePageProps) {
+  const capture = useQuery(captureQueries.detail(captureId));
+  if (capture.data)
+    return <CaptureView capture={capture.data} recordId={recordId ?? capture.data.record?.id ?? null} />;
+  const isUnknown = capture.error instanceof ApiError && capture.error.status === 404;
+  return (
+    <Page>
+      <title>Capture · Benchlark</title>
+      {capture.isPending ? (
+        <LoadingState what="Fetching the capture" />
+      ) : (
+        <FailedState
+          what={isUnknown ? 'There is no such capture.' : 'The capture could not be fetched.'}
+          why={isUnknown ? 'The address may be cut short.' : errorWords(capture.error)}
+          onRetry={isUnknown ? undefined : () => void capture.refetch()}
+        >
+          <p>
+            <Link to="/archive">To the archive</Link>
+          </p>
+        </FailedState>
+      )}
+    </Page>
+  );
+}
+
+function CaptureView({ capture, recordId }: { capture: Capture; recordId: string | null }) {
+  const record = useQuery({ ...recordQueries.detail(recordId ?? ''), enabled: recordId !== null });
+  const detail = record.data?.captureId === capture.id ? record.data : null;
+  return (
+    <Page>
+      <CaptureHead capture={capture} detail={detail} />
+      <Columns margin={<CaptureMargin capture={capture} detail={detail} recordId={recordId} />}>
+        {recordId === null && <NoRecord capture={capture} />}
+        {recordId !== null && record.isPending && <LoadingState what="Fetching the record" />}
+        {record.isError && (
+          <FailedState
+            what="The record could not be fetched."
+            why={errorWords(record.error)}
+            onRetry={() => void record.refetch()}
+          />
+        )}
+        {record.data && !detail && <FailedState what="This record is of another capture." />}
+        {detail && <RecordView key={detail.id} capture={capture} detail={detail} />}
+      </Columns>
+    </Page>
+  );
+}
+
+interface CaptureMarginProps {
+  capture: Capture;
+  detail: ServedRecordDetail | null;
+  recordId: string | null;
+}
+
+function CaptureMargin({ capture, detail, recordId }: CaptureMarginProps) {
+  const canWrite = canWriteCaptures(usePerson());
+  return (
+    <>
+      <WarningsBlock capture={capture} record={detail?.record ?? null} />
+      <CaptureFiling capture={capture} canWrite={canWrite} />
+      <ProvenanceBlock capture={capture} record={detail?.record ?? null} />
+      {detail && <MethodBlock capture={capture} record={detail.record} canWrite={canWrite} />}
+      {detail && <VerifyBlock key={detail.id} captureId={capture.id} recordId={detail.id} />}
+      <RecordsBlock captureId={capture.id} shownId={recordId} />
+    </>
+  );
+}
