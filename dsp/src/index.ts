@@ -45,3 +45,17 @@ export * from './tone/fit-sine.js';
 export * from './tone/phasor.js';
 export * from './measures/registry.js';
 export * from './measures/recognise.js';
+export * from './measures/analyse-capture.js';
+export * from './stimulus/create-stimulus.js';
+export * from './stimulus/parse-descriptor.js';
+export * from './stimulus/mark-codes.js';
+export { STIMULUS_NAMES } from './stimulus/stimulus-kinds.js';
+export {
+  HIGHEST_STIMULUS_RATE_HZ,
+  LOWEST_STIMULUS_RATE_HZ,
+  type StimulusOptions,
+} from './stimulus/stimulus-options.js';
+export * from './practice/device.js';
+export * from './practice/parse-device.js';
+export * from './practice/apply-device.js';
+export * from './practice/practice-devices.js';
