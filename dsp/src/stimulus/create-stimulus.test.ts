@@ -37,7 +37,7 @@ describe('the tones', () => {
     expect(20 * Math.log10(fit.amplitude)).toBeCloseTo(level, 9);
     expect(fit.frequencyHz).toBeCloseTo(997, 7);
     expect(Math.abs(fit.offset)).toBeLessThan(1e-12);
-    expect(channels[1]).toEqual(channels[0]);
+    expect(channels[1].every((x, n) => x === channels[0][n])).toBe(true);
     expect(descriptor.parts[0].steps[0].levelDbfs).toBe(level);
   });
 
@@ -155,7 +155,7 @@ describe('the file around the body', () => {
       [source.frameCount - 3, 100],
     ]) {
       const [run] = await source.read(from, count);
-      expect(run).toEqual(whole.slice(from, from + count));
+      expect([...run]).toEqual([...whole.slice(from, from + count)]);
     }
   });
 });

@@ -18,23 +18,22 @@ export interface MarkSection {
 
 export type Section = ToneSection | MarkSection;
 
-/** sin(2π · frequency · frame / rate) with whole turns taken off first: n · whole hertz stays an exact integer. */
-function toneAt(frame: number, frequencyHz: number, sampleRateHz: number): number {
-  const wholeHz = Math.floor(frequencyHz);
-  const turns =
-    ((frame * wholeHz) % sampleRateHz) / sampleRateHz + (frame * (frequencyHz - wholeHz)) / sampleRateHz;
-  return Math.sin(2 * Math.PI * (turns - Math.floor(turns)));
-}
-
 function addTone(section: ToneSection, sampleRateHz: number, fromFrame: number, samples: Float64Array): void {
   const { frequencyHz, amplitude, rampFrames, frameCount } = section;
   const first = Math.max(0, section.fromFrame - fromFrame);
   const end = Math.min(samples.length, section.fromFrame + frameCount - fromFrame);
-  for (let n = first; n < end; n++) {
-    const frame = fromFrame + n - section.fromFrame;
+  // Whole turns are taken off before the sine: frame · whole hertz is counted in integers, modulo the rate.
+  const wholeHz = Math.floor(frequencyHz);
+  const restHz = frequencyHz - wholeHz;
+  let frame = fromFrame + first - section.fromFrame;
+  let count = (frame * wholeHz) % sampleRateHz;
+  for (let n = first; n < end; n++, frame++) {
+    const turns = (count + ((frame * restHz) % sampleRateHz)) / sampleRateHz;
     const fromEdge = Math.min(frame, frameCount - 1 - frame);
     const gain = fromEdge < rampFrames ? 0.5 - 0.5 * Math.cos((Math.PI * fromEdge) / rampFrames) : 1;
-    samples[n] += amplitude * gain * toneAt(frame, frequencyHz, sampleRateHz);
+    samples[n] += amplitude * gain * Math.sin(2 * Math.PI * turns);
+    count += wholeHz;
+    if (count >= sampleRateHz) count -= sampleRateHz;
   }
 }
 
