@@ -1,13 +1,7 @@
-import {
-  figureUnit,
-  type BenchRecord,
-  type ChannelResult,
-  type FigureUnit,
-  type RecordBody,
-  type Trace,
-} from '@benchlark/dsp';
+import { type BenchRecord, type ChannelResult, type RecordBody, type Trace } from '@benchlark/dsp';
 import type { MainFigure } from '../records/record.entity';
 import type { RecordFigure } from '../records/record-figure.entity';
+import { unitWord } from '../records/unit-word';
 
 export const SKETCH_POINTS = 64;
 const SKETCH_FLOOR_DB = -160;
@@ -31,26 +25,6 @@ const MAIN_KEYS: Readonly<Record<string, readonly string[]>> = {
 /** Of these the smaller value is the worse channel's. */
 const SMALLER_IS_WORSE = /^(dynamicRange|separation|snr|sinad|enob|minus3DbHigh)/;
 
-const UNIT_WORDS: Readonly<Record<FigureUnit, string>> = {
-  Dbfs: 'dBFS',
-  Dbtp: 'dBTP',
-  Dbr: 'dBr',
-  Dbv: 'dBV',
-  Db: 'dB',
-  Lufs: 'LUFS',
-  Lu: 'LU',
-  Percent: '%',
-  Hz: 'Hz',
-  Ppm: 'ppm',
-  Ps: 'ps',
-  Deg: '°',
-  Bits: 'bits',
-  Count: '',
-  Ratio: '',
-  S: 's',
-  V: 'V',
-};
-
 type Place = Pick<ChannelResult, 'channel' | 'figures'> & Partial<ChannelResult>;
 
 function placesOf(body: RecordBody): Place[] {
@@ -68,11 +42,10 @@ export function mainFigureOf(body: RecordBody): MainFigure | null {
     found.sort((one, other) => sign * (other.value - one.value));
     const [worst] = found;
     if (!worst) continue;
-    const unit = figureUnit(key);
     return {
       key,
       value: worst.value,
-      unit: unit === null ? '' : UNIT_WORDS[unit],
+      unit: unitWord(key),
       channel: worst.channel,
       limitBy: worst.limit?.by ?? null,
       marginDb: worst.limit?.marginDb ?? null,

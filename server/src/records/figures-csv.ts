@@ -1,5 +1,6 @@
-import { figureUnit, type FigureValue } from '@benchlark/dsp';
+import type { FigureValue } from '@benchlark/dsp';
 import type { StoredRecord } from './stored-record';
+import { unitWord } from './unit-word';
 
 const HEADINGS = [
   'segment',
@@ -43,7 +44,7 @@ export function figuresCsv(record: StoredRecord): string {
           channel,
           key,
           value,
-          figureUnit(key),
+          unitWord(key),
           by,
           marginDb,
           uncertainty?.[key]?.expanded,
