@@ -62,12 +62,18 @@ function addLeaks(
   });
 }
 
+interface StageContext {
+  readonly sampleRateHz: number;
+  /** Of silence before the signal. */
+  readonly leadFrames: number;
+  readonly randomFor: (channelIndex: number) => Random;
+}
+
 /** Passes the channels through one stage; those the stage isn't for stay as they are. */
 function applyStage(
   stage: PracticeStage,
   channels: Float64Array[],
-  sampleRateHz: number,
-  randomFor: (channelIndex: number) => Random,
+  { sampleRateHz, leadFrames, randomFor }: StageContext,
 ): Float64Array[] {
   const indices =
     stage.channel === 'both' ? channels.map((_, index) => index) : [CHANNEL_INDEX[stage.channel]];
@@ -82,7 +88,7 @@ function applyStage(
     case 'jitter':
       return retime(jitterChannels(chosen, sampleRateHz, stage, randomFor(0)));
     case 'clock':
-      return runFast(channels, stage.ppm);
+      return runFast(channels, stage.ppm, leadFrames);
     case 'crosstalk':
       return addLeaks(channels, indices, (index) => leakOf(channels[1 - index], sampleRateHz, stage));
     case 'gain':
@@ -110,7 +116,8 @@ function applyStage(
  * @param channels - one array a channel, all of one length; linear, ±1.0 = full scale; not modified
  * @param sampleRateHz - of the recording
  * @param device - checked, as `parseDevice` gives it
- * @returns new channels; as long as those given, but for `lead` (longer at both ends) and `clock` (length / (1 + ppm))
+ * @returns new channels, as long as those given but for `lead` (longer at both ends) and `clock` (shorter or longer
+ *   behind the signal's first frame, which stays where it is)
  * @throws DspInputError `BAD_DEVICE` when the device doesn't fit the recording, naming the stage; `BAD_ARGUMENT` without
  *   channels or with channels of several lengths
  *
@@ -133,7 +140,11 @@ export function applyDevice(
   const start = channels.map((samples) => surround(samples, leadFrames));
   return device.stages.reduce(
     (current, stage, index) =>
-      applyStage(stage, current, sampleRateHz, (channelIndex) => randomOf(device.seed, index, channelIndex)),
+      applyStage(stage, current, {
+        sampleRateHz,
+        leadFrames,
+        randomFor: (channelIndex) => randomOf(device.seed, index, channelIndex),
+      }),
     start,
   );
 }

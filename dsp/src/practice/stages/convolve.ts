@@ -27,12 +27,12 @@ function designKernel(fft: RealFft, gainAt: (bin: number) => number): Float64Arr
   return kernel;
 }
 
-/** Bins of the design's grid: 5.9 Hz apart at 48 kHz. */
-const DESIGN_LENGTH = 8192;
-const RUN_LENGTH = 32_768;
+/** The design's grid: its frequencies are 1.5 Hz apart at 48 kHz, 5.9 Hz at 192 kHz. */
+const DESIGN_LENGTH = 32_768;
+const RUN_LENGTH = 131_072;
 
 /**
- * Filters without phase, by a kernel of 8,191 taps designed on a grid of frequencies and fast convolution (overlap-save).
+ * Filters without phase, by a kernel of 32,767 taps designed on a grid of frequencies and fast convolution (overlap-save).
  *
  * @param samples - not modified; silence is assumed beyond both ends
  * @param gainAt - linear gain wanted at a frequency, 0 to half the rate

@@ -11,7 +11,7 @@ const DB_PER_OCTAVE_AT_SLOPE_1 = ratioToDb(2);
  * Gives what leaks out of a channel: its level at 1 kHz, and so many decibels more for every octave above.
  *
  * @param samples - the channel that leaks; not modified
- * @returns a new array; zero-phase, the slope held to 0.05 dB from 40 Hz to 0.45 of the rate
+ * @returns a new array; zero-phase, the slope held to 0.1 dB from 50 Hz to 0.45 of the rate
  */
 export function leakOf(samples: Float64Array, sampleRateHz: number, stage: CrosstalkStage): Float64Array {
   const gain = dbToRatio(stage.levelDb);

@@ -11,10 +11,17 @@ export function delayChannels(channels: readonly Float64Array[], delayFrames: nu
   return interpolate(channels, channels[0].length, (frame) => frame - delayFrames);
 }
 
-/** Plays channels on a clock that is `ppm` fast against the recorder's: position n of the recording holds n · (1 + ppm). */
-export function runFast(channels: readonly Float64Array[], ppm: number): Float64Array[] {
+/**
+ * Plays channels on a clock that is `ppm` fast against the recorder's: frame n of the recording holds what stood at
+ * (n - pivot) · (1 + ppm · 1e-6) + pivot.
+ *
+ * @param pivotFrame - where both clocks agree: the signal's first frame, so that its delay stays what it was
+ * @returns channels of pivot + (length - pivot) / (1 + ppm · 1e-6) frames, rounded
+ */
+export function runFast(channels: readonly Float64Array[], ppm: number, pivotFrame: number): Float64Array[] {
   const speed = 1 + ppm * 1e-6;
-  return interpolate(channels, Math.round(channels[0].length / speed), (frame) => frame * speed);
+  const frameCount = pivotFrame + Math.round((channels[0].length - pivotFrame) / speed);
+  return interpolate(channels, frameCount, (frame) => (frame - pivotFrame) * speed + pivotFrame);
 }
 
 /**
