@@ -4,27 +4,15 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { Readable } from 'node:stream';
 import { buffer } from 'node:stream/consumers';
-import S3rver from 's3rver';
 import { FolderStore, MARKER_NAME } from '../src/storage/folder-store';
 import { ObjectMissingError, StorageNotReadyError, type ObjectStore } from '../src/storage/object-store';
 import { S3Store } from '../src/storage/s3-store';
 import { SweepService } from '../src/storage/sweep.service';
 import { createBench } from './support/bench';
+import { startFakeS3 } from './support/fake-s3';
 import { wavBytes } from './support/wav-bytes';
 
 const sha256Of = (bytes: Buffer) => createHash('sha256').update(bytes).digest('hex');
-
-async function startFakeS3(directory: string): Promise<{ url: string; stop: () => Promise<void> }> {
-  const fake = new S3rver({
-    port: 0,
-    address: '127.0.0.1',
-    silent: true,
-    directory,
-    configureBuckets: [{ name: 'bench', configs: [] }],
-  });
-  const address = await fake.run();
-  return { url: `http://127.0.0.1:${address.port}`, stop: () => fake.close() };
-}
 
 describe.each(['folder', 's3'] as const)('object store (%s)', (kind) => {
   let root: string;

@@ -52,6 +52,8 @@ export class S3Store extends ObjectStore {
   constructor(private readonly place: S3Place) {
     super();
     this.tempFolder = place.tempFolder;
+    // Which Node versions we run on is said in our own documents.
+    process.env['AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED'] ??= 'true';
     this.#client = new S3Client({
       region: place.region,
       endpoint: place.endpoint,
