@@ -10,9 +10,14 @@ function alignPoints(values: readonly string[]): string[] {
   return padded.map((value) => value.padEnd(width));
 }
 
+function marginText(marginDb: number): string {
+  if (Math.abs(marginDb) < 0.05) return 'at it';
+  return `${Math.abs(marginDb).toFixed(1)} dB ${marginDb > 0 ? 'above' : 'below'} it`;
+}
+
 function worthText(key: string, limit: FigureLimit | undefined): string {
   if (!limit) return '';
-  const margin = limit.marginDb === null ? '' : `, ${limit.marginDb.toFixed(1)} dB above it`;
+  const margin = limit.marginDb === null ? '' : `, ${marginText(limit.marginDb)}`;
   const bound = limit.below === null ? '' : `at most ${numberText(key, limit.below)}, `;
   return `${bound}limited by ${limit.by}${margin}`;
 }
