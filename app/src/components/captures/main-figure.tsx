@@ -7,7 +7,7 @@ import { describeFigure } from '@/lib/figures';
 type Main = NonNullable<RecordSummary['mainFigure']>;
 
 /** The limit as a list row knows it: by what, and how far away. */
-function limitOf({ limitBy, marginDb }: Main): FigureLimit | null {
+export function limitOfMain({ limitBy, marginDb }: Main): FigureLimit | null {
   if (limitBy === null) return null;
   return { by: limitBy as FigureLimit['by'], marginDb, floor: null, low: null, high: null, below: null };
 }
@@ -22,7 +22,7 @@ export function MainFigure({ main }: { main: Main }) {
       <Figure
         figureKey={main.key}
         value={main.value}
-        limit={limitOf(main)}
+        limit={limitOfMain(main)}
         uncertaintyCh={0}
         integerCh={4}
         fractionCh={2}

@@ -25,7 +25,7 @@ export function SessionsTable() {
     );
   }
   return (
-    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Sessions">
+    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of sessions">
       <table className="bl-table">
         <thead>
           <tr>

@@ -115,7 +115,7 @@ function TokenTable({
     },
   });
   return (
-    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Tokens">
+    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of tokens">
       <table className="bl-table">
         <thead>
           <tr>

@@ -1,4 +1,5 @@
 import { Link } from 'react-router-dom';
+import { limitOfMain } from '@/components/captures/main-figure';
 import { Figure } from '@/components/figures/figure';
 import type { Capture } from '@/lib/api-schema';
 import { channelName, unitName, whatWasMeasured } from '@/lib/capture-words';
@@ -78,7 +79,7 @@ function ArchiveCard({ capture }: { capture: Capture }) {
               fractionCh={0}
               uncertaintyCh={0}
               hasUnit
-              hasWorth={false}
+              limit={limitOfMain(main)}
             />
           </span>
         )}

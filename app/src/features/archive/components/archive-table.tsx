@@ -52,7 +52,7 @@ export function ArchiveTable({ captures, filter, chosen, canChoose, onSort, onCh
   const isByDay = filter.sort === 'uploadedAt' || filter.sort === 'number';
   const days = isByDay ? daysOf(captures) : [];
   return (
-    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Captures">
+    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of captures">
       <table className="bl-table bl-table-rows bl-archive-table">
         <thead>
           {table.getHeaderGroups().map((group) => (

@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import { Columns, Page } from '@/components/page/page';
+import { PageHead } from '@/components/page/page-head';
 import { FailedState, LoadingState } from '@/components/states/states';
 import { ApiError } from '@/lib/api-error';
 import type { Capture } from '@/lib/api-schema';
@@ -34,7 +35,7 @@ export function CapturePage({ captureId, recordId }: CapturePageProps) {
   const isUnknown = capture.error instanceof ApiError && capture.error.status === 404;
   return (
     <Page>
-      <title>Capture · Benchlark</title>
+      <PageHead title="Capture" hasDivider />
       {capture.isPending ? (
         <LoadingState what="Fetching the capture" />
       ) : (

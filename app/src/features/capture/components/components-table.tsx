@@ -25,7 +25,12 @@ export function ComponentsTable({ record }: { record: ServedRecord }) {
       {lines.length === 0 ? (
         <p className="bl-ink-2">None stands out.</p>
       ) : (
-        <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Lines above the noise">
+        <div
+          className="bl-table-scroll"
+          tabIndex={0}
+          role="region"
+          aria-label="Table of lines above the noise"
+        >
           <table className="bl-table">
             <thead>
               <tr>

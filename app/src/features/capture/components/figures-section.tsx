@@ -1,11 +1,12 @@
 import { Figure } from '@/components/figures/figure';
 import { WorthKey } from '@/components/figures/worth-mark';
 import { Section } from '@/components/page/page';
+import { formatFigure } from '@/lib/format/figure';
 import { channelName } from '@/lib/capture-words';
 import { PHONE_QUERY, useMedia } from '@/lib/use-media';
 import type { ServedRecord } from '../api/record-queries';
 import { buildFigureTable } from '../model/figure-table';
-import type { FigureRow, FigureTable } from '../model/figure-table';
+import type { FigureCell, FigureRow, FigureTable } from '../model/figure-table';
 
 /** Figures of all channels in one table: unit, conditions, uncertainty and worth beside each. */
 export function FiguresSection({ record }: { record: ServedRecord }) {
@@ -13,19 +14,19 @@ export function FiguresSection({ record }: { record: ServedRecord }) {
   const isPhone = useMedia(PHONE_QUERY);
   return (
     <Section title="Figures" sub={isPhone ? undefined : '± is the expanded uncertainty, k = 2'}>
-      <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Figures">
+      <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of figures">
         <table className="bl-table bl-figure-table">
           <thead>
             <tr>
               <th scope="col">figure</th>
               {!isPhone && <th scope="col">unit</th>}
               {table.channels.map((channel) => (
-                <th key={channel} scope="col" className="bl-table-number">
+                <th key={channel} scope="col" className="bl-figure-head">
                   {channelName(channel)}
                 </th>
               ))}
               {table.hasRig && !isPhone && (
-                <th scope="col" className="bl-table-number">
+                <th scope="col" className="bl-figure-head">
                   rig alone
                 </th>
               )}
@@ -43,6 +44,11 @@ export function FiguresSection({ record }: { record: ServedRecord }) {
   );
 }
 
+/** A long fraction (a percentage) takes its room from the empty column of ±, so that the marks stay in theirs. */
+function spareCh(row: FigureRow, cell: FigureCell, table: FigureTable): number {
+  return Math.max(0, formatFigure(row.key, cell).fraction.length - table.fractionCh) * (14.5 / 12.5);
+}
+
 function FigureRowView({ row, table, isPhone }: { row: FigureRow; table: FigureTable; isPhone: boolean }) {
   return (
     <tr>
@@ -56,23 +62,14 @@ function FigureRowView({ row, table, isPhone }: { row: FigureRow; table: FigureT
       </th>
       {!isPhone && <td className="bl-ink-2">{row.unit}</td>}
       {row.cells.map((cell) => (
-        <td key={cell.channel} className="bl-table-number">
+        <td key={cell.channel}>
           {cell.value !== undefined && (
-            <Figure
-              figureKey={row.key}
-              value={cell.value}
-              limit={cell.limit}
-              uncertainty={cell.uncertainty}
-              integerCh={table.integerCh}
-              fractionCh={table.fractionCh}
-              uncertaintyCh={table.uncertaintyCh}
-              missingWhy={cell.missingWhy}
-            />
+            <FigureCellView row={row} cell={cell} table={table} isPhone={isPhone} />
           )}
         </td>
       ))}
       {table.hasRig && !isPhone && (
-        <td className="bl-table-number bl-figure-rig">
+        <td className="bl-figure-rig">
           {row.rig && row.rig.value !== null && (
             <Figure
               figureKey={row.key}
@@ -86,5 +83,32 @@ function FigureRowView({ row, table, isPhone }: { row: FigureRow; table: FigureT
         </td>
       )}
     </tr>
+  );
+}
+
+interface FigureCellProps {
+  row: FigureRow;
+  cell: FigureCell;
+  table: FigureTable;
+  isPhone: boolean;
+}
+
+/** On a phone the uncertainty stands under its value, so that two channels fit beside each other. */
+function FigureCellView({ row, cell, table, isPhone }: FigureCellProps) {
+  const { plusMinus, bound } = formatFigure(row.key, cell);
+  return (
+    <>
+      <Figure
+        figureKey={row.key}
+        value={cell.value}
+        limit={cell.limit}
+        uncertainty={cell.uncertainty}
+        integerCh={table.integerCh}
+        fractionCh={table.fractionCh}
+        uncertaintyCh={isPhone ? 0 : Math.max(0, table.uncertaintyCh - spareCh(row, cell, table))}
+        missingWhy={cell.missingWhy}
+      />
+      {isPhone && <span className="bl-figure-under">{bound ? 'bound' : plusMinus}</span>}
+    </>
   );
 }

@@ -11,7 +11,7 @@ export function HarmonicsTable({ record }: { record: ServedRecord }) {
   );
   if (orders.length === 0) return null;
   return (
-    <div className="bl-table-scroll bl-harmonics" tabIndex={0} role="region" aria-label="Harmonics">
+    <div className="bl-table-scroll bl-harmonics" tabIndex={0} role="region" aria-label="Table of harmonics">
       <table className="bl-table">
         <thead>
           <tr>

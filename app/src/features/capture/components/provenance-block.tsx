@@ -5,14 +5,8 @@ import type { Fact } from '@/components/page/page';
 import type { Capture } from '@/lib/api-schema';
 import { bitsWords } from '@/lib/capture-words';
 import { formatDateTime } from '@/lib/format/date';
-import {
-  formatBytes,
-  formatCount,
-  formatDuration,
-  formatPlain,
-  formatSampleRate,
-  withUnit,
-} from '@/lib/format/quantity';
+import { formatNumber } from '@/lib/format/number';
+import { formatBytes, formatCount, formatDuration, formatSampleRate, withUnit } from '@/lib/format/quantity';
 import type { ServedRecord } from '../api/record-queries';
 import { recognisedWords } from '../model/record-words';
 
@@ -22,7 +16,7 @@ export function ProvenanceBlock({ capture, record }: { capture: Capture; record:
     <MarginBlock title="Provenance">
       <Facts facts={factsOf(capture, record)} />
       {capture.sameBytesAs.length > 0 && (
-        <p className="bl-capture-keep">
+        <p className="bl-capture-note">
           The same bytes as{' '}
           {capture.sameBytesAs.map(({ id, number }, index) => (
             <span key={id}>
@@ -59,7 +53,7 @@ function factsOf(capture: Capture, record: ServedRecord | null): Fact[] {
   if (stimulus && stimulus.clockOffsetPpm !== null) {
     facts.push({
       term: 'clock',
-      detail: `${withUnit(formatPlain(Number(stimulus.clockOffsetPpm.toFixed(1))), 'ppm')} against the recorder`,
+      detail: `${withUnit(formatNumber(stimulus.clockOffsetPpm, { decimals: 1, isSigned: true }), 'ppm')} against the recorder`,
     });
   }
   if (stimulus?.polarity) facts.push({ term: 'polarity', detail: stimulus.polarity });

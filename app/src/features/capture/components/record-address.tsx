@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Navigate } from 'react-router-dom';
 import { Page } from '@/components/page/page';
+import { PageHead } from '@/components/page/page-head';
 import { FailedState, LoadingState } from '@/components/states/states';
 import { errorWords } from '@/lib/error-words';
 import { recordQueries } from '../api/record-queries';
@@ -11,7 +12,7 @@ export function RecordAddress({ recordId }: { recordId: string }) {
   if (record.data) return <Navigate to={`/captures/${record.data.captureId}?record=${recordId}`} replace />;
   return (
     <Page>
-      <title>Record · Benchlark</title>
+      <PageHead title="Record" hasDivider />
       {record.isPending ? (
         <LoadingState what="Looking for the record" />
       ) : (

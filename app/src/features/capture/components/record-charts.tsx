@@ -10,6 +10,7 @@ import type { ServedRecord, ServedRecordDetail } from '../api/record-queries';
 import { useTraces } from '../hooks/use-traces';
 import type { TracesState } from '../hooks/use-traces';
 import { conditionsLine } from '../model/record-words';
+import { residualScale } from '../model/residual-scale';
 
 export interface RecordChartsProps {
   capture: Capture;
@@ -61,23 +62,30 @@ function Residual({ capture, detail }: RecordChartsProps) {
   const { record } = detail;
   const residual = useTraces(record, 'residual');
   const wave = useTraces(record, 'wave');
-  const channels = useMemo(() => {
-    if (residual.kind !== 'ready' || wave.kind !== 'ready') return [];
-    return residual.traces.map(({ channel, trace }) => ({
+  const yUnit = record.channels.find(({ traces }) => traces['residual'])?.traces['residual']?.yUnit ?? '';
+  const { channels, unit } = useMemo(() => {
+    if (residual.kind !== 'ready' || wave.kind !== 'ready') return { channels: [], unit: yUnit };
+    const scale = residualScale(
+      yUnit,
+      residual.traces.map(({ trace }) => trace.y),
+    );
+    const scaled = residual.traces.map(({ channel, trace }) => ({
       name: channelName(channel),
       x: trace.x,
-      residual: trace.y,
-      wave: wave.traces.find((one) => one.channel === channel)?.trace.y ?? null,
+      residual: trace.y.map((value) => value * scale.factor),
+      wave:
+        wave.traces.find((one) => one.channel === channel)?.trace.y.map((value) => value * scale.factor) ??
+        null,
     }));
-  }, [residual, wave]);
+    return { channels: scaled, unit: scale.unit };
+  }, [residual, wave, yUnit]);
   const source = useSource(capture, detail, 'residual');
-  const yUnit = record.channels.find(({ traces }) => traces['residual'])?.traces['residual']?.yUnit ?? '';
   return (
     <ResidualChart
       sub="one period, averaged, fundamental removed"
       state={chartState(residual.kind === 'ready' ? wave : residual)}
       channels={channels}
-      yUnit={yUnit}
+      yUnit={unit}
       source={source}
     />
   );

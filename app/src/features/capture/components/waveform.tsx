@@ -70,9 +70,13 @@ function WaveformDrawing({ overview, capture, channels, segment }: WaveformProps
           />
         )}
         {overview.channels.map((channel, index) => (
-          <g key={index} transform={`translate(0 ${index * LANE})`}>
+          <g
+            key={index}
+            className={`bl-waveform-lane bl-waveform-${(index % 6) + 1}`}
+            transform={`translate(0 ${index * LANE})`}
+          >
             <path className="bl-waveform-zero" d={`M0 ${LANE / 2}H${WIDTH}`} />
-            <path className={`bl-waveform-${(index % 6) + 1}`} d={envelope(channel)} />
+            <path d={envelope(channel)} />
           </g>
         ))}
         <rect className="bl-waveform-frame" width={WIDTH} height={height} />

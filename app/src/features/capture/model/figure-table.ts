@@ -37,6 +37,9 @@ export interface FigureTable {
   readonly worths: readonly Worth[];
 }
 
+/** Two decimals: only percentages have more, and they would draw ± away from every other value. */
+const MOST_FRACTION_CH = 3;
+
 /** The record's figures as one table: a row each, a cell for each channel, in the catalogue's order. */
 export function buildFigureTable(record: FigureRecord): FigureTable {
   const channels = record.channels.map(({ channel }) => channel);
@@ -50,7 +53,7 @@ export function buildFigureTable(record: FigureRecord): FigureTable {
     channels,
     rows,
     integerCh: widest(texts.map(({ integer, bound }) => integer.length + (bound ? 1 : 0))),
-    fractionCh: widest(texts.map(({ fraction }) => fraction.length)),
+    fractionCh: Math.min(MOST_FRACTION_CH, widest(texts.map(({ fraction }) => fraction.length))),
     uncertaintyCh: widest(
       texts.map(({ plusMinus, bound }) => (bound ? 'bound'.length : (plusMinus?.length ?? 0))),
     ),

@@ -26,7 +26,7 @@ export function InvitationsTable() {
   }
   if (invitations.data.items.length === 0) return <p className="bl-ink-2">None is open.</p>;
   return (
-    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Invitations">
+    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of invitations">
       <table className="bl-table">
         <thead>
           <tr>

@@ -57,13 +57,14 @@ export function SignInForm({ demo, email = '', onSignedIn }: SignInFormProps) {
                 <button
                   type="button"
                   className="bl-word"
+                  aria-label={`Fill in as ${account.displayName}`}
                   onClick={() => {
                     setValue('email', account.email, { shouldValidate: true });
                     setValue('password', account.password, { shouldValidate: true });
                     setFocus('password');
                   }}
                 >
-                  Fill in<span className="bl-hidden"> as {account.displayName}</span>
+                  Fill in
                 </button>
               </li>
             ))}

@@ -9,14 +9,14 @@ const LAST_CYCLES_PER_UNIT = 0.0078;
 
 function sweepPath(): string {
   const ratio = Math.log(LAST_CYCLES_PER_UNIT / FIRST_CYCLES_PER_UNIT);
-  // The phase is counted back from the end, so that the sweep arrives at the lark with a rising zero crossing.
+  // The phase is counted back from the end, so that the sweep arrives where the lark's own wave falls through zero.
   const cyclesTo = (x: number) =>
     ((FIRST_CYCLES_PER_UNIT * SWEEP_WIDTH) / ratio) * Math.exp((ratio * x) / SWEEP_WIDTH);
   const end = cyclesTo(SWEEP_WIDTH);
   return Array.from({ length: STEPS + 1 }, (_, n) => {
     const x = (n / STEPS) * SWEEP_WIDTH;
     const height = 2 + 36 * (x / SWEEP_WIDTH) ** 2;
-    const y = MIDDLE - height * Math.sin(2 * Math.PI * (cyclesTo(x) - end));
+    const y = MIDDLE + height * Math.sin(2 * Math.PI * (cyclesTo(x) - end));
     return `${n === 0 ? 'M' : 'L'}${x.toFixed(1)} ${y.toFixed(1)}`;
   }).join('');
 }

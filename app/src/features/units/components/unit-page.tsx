@@ -25,7 +25,7 @@ export function UnitPage({ unitId }: { unitId: string }) {
   if (unit.data) return <UnitView unit={unit.data} />;
   return (
     <Page>
-      <title>Unit · Benchlark</title>
+      <PageHead title="Unit" crumbs={[{ label: 'Units', to: '/units' }]} hasDivider />
       {unit.isPending ? (
         <LoadingState what="Fetching the unit" />
       ) : (
@@ -132,7 +132,7 @@ function ConditionTable({ unit, conditions, canWrite }: ConditionTableProps) {
     );
   }
   return (
-    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Conditions">
+    <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of conditions">
       <table className="bl-table">
         <thead>
           <tr>
