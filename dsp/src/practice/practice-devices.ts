@@ -1,7 +1,12 @@
 import { DEVICE_SCHEMA, type PracticeDevice, type PracticeStage } from './device.js';
 
-/** Puts an interface's own noise behind the stages, and a recorder that runs a little longer than the player. */
-function build(name: string, seed: number, stages: readonly PracticeStage[]): PracticeDevice {
+/** Puts an interface's noise behind the stages, a recorder that runs longer than the player, and its own faults last. */
+function build(
+  name: string,
+  seed: number,
+  stages: readonly PracticeStage[],
+  recorder: readonly PracticeStage[] = [],
+): PracticeDevice {
   return {
     schema: DEVICE_SCHEMA,
     name,
@@ -11,6 +16,7 @@ function build(name: string, seed: number, stages: readonly PracticeStage[]): Pr
       ...stages,
       { kind: 'noise', channel: 'both', levelDbfs: -112 },
       { kind: 'lead', channel: 'both', seconds: 0.5 },
+      ...recorder,
     ],
   };
 }
@@ -39,9 +45,14 @@ export const PRACTICE_DEVICES: Readonly<Record<string, PracticeDevice>> = {
     { kind: 'jitter', channel: 'both', peakToPeakPs: 2400, frequencyHz: 180 },
     { kind: 'filter', channel: 'both', type: 'low-pass', frequencyHz: 19_000, order: 3 },
   ]),
-  'tired-recorder': build('a recorder of 16 bits that inverts and drifts off zero', 106, [
-    { kind: 'polarity', channel: 'both' },
-    { kind: 'offset', channel: 'left', value: 0.004 },
-    { kind: 'quantise', channel: 'both', bits: 16, dither: 'none' },
-  ]),
+  'tired-recorder': build(
+    'a recorder of 16 bits that inverts and drifts off zero',
+    106,
+    [],
+    [
+      { kind: 'polarity', channel: 'both' },
+      { kind: 'offset', channel: 'left', value: 0.004 },
+      { kind: 'quantise', channel: 'both', bits: 16, dither: 'none' },
+    ],
+  ),
 };
