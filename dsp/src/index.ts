@@ -59,3 +59,4 @@ export * from './practice/device.js';
 export * from './practice/parse-device.js';
 export * from './practice/apply-device.js';
 export * from './practice/practice-devices.js';
+export * from './stimulus/locate-marks.js';
