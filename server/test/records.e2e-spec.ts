@@ -240,6 +240,22 @@ describe('records', () => {
     expect(states).toContain('analysing');
     await request(bench.server).get('/api/events').set(bench.as('reader')).expect(403);
   });
+
+  it('begins the stream of one capture with where it stands', async () => {
+    const { port } = bench.server.address() as AddressInfo;
+    const ending = new AbortController();
+    const url = `http://127.0.0.1:${port}/api/captures/${capture.id}/events`;
+    const stream = await fetch(url, { headers: bench.as('technician'), signal: ending.signal });
+    let text = '';
+    for await (const chunk of stream.body as unknown as AsyncIterable<Uint8Array>) {
+      text += Buffer.from(chunk).toString('utf8');
+      if (text.includes('data: ')) break;
+    }
+    ending.abort();
+    const event = JSON.parse(/data: (.*)/.exec(text)![1]!) as CaptureEvent;
+    expect(event).toMatchObject({ captureId: capture.id, state: 'done', progress: null, failure: null });
+    await bench.get('/api/captures/00000000-0000-4000-8000-000000000000/events').expect(404);
+  });
 });
 
 async function analyseHere(bytes: Buffer) {

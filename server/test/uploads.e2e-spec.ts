@@ -1,10 +1,11 @@
 import { createHash } from 'node:crypto';
 import { once } from 'node:events';
 import { connect, type AddressInfo } from 'node:net';
-import { readFile, stat } from 'node:fs/promises';
+import { readFile, rename, stat } from 'node:fs/promises';
 import { join } from 'node:path';
 import request from 'supertest';
 import type { CaptureDto } from '../src/captures/dto/capture.dto';
+import { MARKER_NAME } from '../src/storage/folder-store';
 import { createBench, type Bench } from './support/bench';
 import { wavBytes } from './support/wav-bytes';
 
@@ -49,6 +50,11 @@ describe('uploads', () => {
     });
     const path = join(bench.storeDir, sha256.slice(0, 2), sha256.slice(2, 4), sha256);
     expect(await readFile(path)).toEqual(bytes);
+    const trail = await bench.dataSource.query(
+      `SELECT actor_name AS who, detail FROM audit_entry WHERE action = 'capture.stored' AND subject = $1`,
+      [`capture:${capture.id}`],
+    );
+    expect(trail).toEqual([{ who: 'Test technician', detail: `höhe 1.wav, SHA-256 ${sha256}` }]);
     expect((await stat(path)).mode & 0o077).toBe(0);
   });
 
@@ -227,6 +233,40 @@ describe('uploads', () => {
   ])('only ever shows the name %s', async (name, shown) => {
     const capture = await bench.uploaded(wavBytes({ seed: 20, durationS: 0.01 }), { name });
     expect(capture.fileName).toBe(shown);
+  });
+});
+
+describe('uploads to a store in trouble', () => {
+  it('are refused while the disk is nearly full, with the reason, and taken again afterwards', async () => {
+    const bench = await createBench({ env: { STORAGE_MIN_FREE_BYTES: String(2 ** 50) } });
+    try {
+      const answer = await bench.upload(wavBytes()).expect(507);
+      expect(answer.body).toMatchObject({
+        code: 'STORAGE_FULL',
+        detail: expect.any(String),
+        remedy: expect.any(String),
+      });
+      expect(await bench.tempFiles()).toEqual([]);
+    } finally {
+      await bench.close();
+    }
+  });
+
+  it('are refused while the folder is not the store, which readiness shows', async () => {
+    const bench = await createBench();
+    try {
+      await request(bench.server).get('/api/health/ready').expect(200);
+      const marker = join(bench.storeDir, MARKER_NAME);
+      await rename(marker, `${marker}.away`);
+      await bench.upload(wavBytes()).expect(503).expect('Retry-After', '30');
+      const ready = await request(bench.server).get('/api/health/ready').expect(503);
+      expect(ready.body.components).toMatchObject({ storage: 'down', database: 'up' });
+      await request(bench.server).get('/api/health/live').expect(200);
+      await rename(`${marker}.away`, marker);
+      await bench.uploaded(wavBytes());
+    } finally {
+      await bench.close();
+    }
   });
 });
 
