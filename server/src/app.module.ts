@@ -1,5 +1,7 @@
 import { Module, type DynamicModule } from '@nestjs/common';
 import { LoggerModule } from 'nestjs-pino';
+import { AuditModule } from './audit/audit.module';
+import { AccessModule } from './auth/access.module';
 import { loggerOptions } from './common/logger-options';
 import { ShutdownModule } from './common/shutdown-state';
 import { EnvModule } from './config/env.module';
@@ -27,6 +29,8 @@ export class AppModule {
         ShutdownModule,
         DatabaseModule,
         HealthModule,
+        AuditModule,
+        AccessModule,
         StorageModule,
         UnitsModule,
         RigsModule,

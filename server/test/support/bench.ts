@@ -5,8 +5,6 @@ import request from 'supertest';
 import { ApiTokensService } from '../../src/auth/api-tokens/api-tokens.service';
 import type { CaptureDto } from '../../src/captures/dto/capture.dto';
 import type { Role } from '../../src/common/roles';
-import { AccessModule } from '../../src/auth/access.module';
-import { AuditModule } from '../../src/audit/audit.module';
 import { createTestApp, type TestApp, type TestAppOptions } from './test-app';
 
 export interface Bench extends TestApp {
@@ -34,7 +32,6 @@ const ROLES: readonly Role[] = ['technician', 'reviewer', 'peer', 'administrator
 export async function createBench(options: TestAppOptions = {}): Promise<Bench> {
   const storeDir = await mkdtemp(join(tmpdir(), 'benchlark-test-'));
   const testApp = await createTestApp({
-    imports: [AccessModule, AuditModule],
     ...options,
     env: { STORE_DIR: storeDir, ...options.env },
   });
