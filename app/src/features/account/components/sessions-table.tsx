@@ -67,13 +67,15 @@ export function SessionsTable() {
   );
 }
 
-/** What a person knows it by; the whole of what the browser says of itself is long and mostly history. */
+/** In this order: most browsers name others of the list besides themselves, for history's sake. */
+const BROWSERS = ['Firefox', 'Edg', 'OPR', 'Chrome', 'Safari'] as const;
+const SYSTEMS = ['Android', 'iPhone', 'iPad', 'Windows', 'Macintosh', 'Linux'] as const;
+
+/** What a person knows it by; the whole of what a browser says of itself is long. */
 function browserWords(userAgent: string): string {
-  const system = /\(([^;)]+)/.exec(userAgent)?.[1];
-  const last = userAgent
-    .split(' ')
-    .filter((part) => part.includes('/'))
-    .at(-1);
-  const parts = [last?.replace('/', ' '), system].filter(Boolean);
+  const browser = BROWSERS.find((name) => userAgent.includes(`${name}/`));
+  const version = browser && new RegExp(`${browser}/(\\d+)`).exec(userAgent)?.[1];
+  const system = SYSTEMS.find((name) => userAgent.includes(name));
+  const parts = [[browser, version].filter(Boolean).join(' '), system].filter(Boolean);
   return parts.length > 0 ? parts.join(', ') : 'a browser that does not say what it is';
 }

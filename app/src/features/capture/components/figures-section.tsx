@@ -44,6 +44,9 @@ export function FiguresSection({ record }: { record: ServedRecord }) {
   );
 }
 
+/** The gap before ± is part of its width. */
+const PLUS_MINUS_GAP_CH = 0.6;
+
 /** A long fraction (a percentage) takes its room from the empty column of ±, so that the marks stay in theirs. */
 function spareCh(row: FigureRow, cell: FigureCell, table: FigureTable): number {
   return Math.max(0, formatFigure(row.key, cell).fraction.length - table.fractionCh) * (14.5 / 12.5);
@@ -105,7 +108,9 @@ function FigureCellView({ row, cell, table, isPhone }: FigureCellProps) {
         uncertainty={cell.uncertainty}
         integerCh={table.integerCh}
         fractionCh={table.fractionCh}
-        uncertaintyCh={isPhone ? 0 : Math.max(0, table.uncertaintyCh - spareCh(row, cell, table))}
+        uncertaintyCh={
+          isPhone ? 0 : Math.max(0, table.uncertaintyCh + PLUS_MINUS_GAP_CH - spareCh(row, cell, table))
+        }
         missingWhy={cell.missingWhy}
       />
       {isPhone && <span className="bl-figure-under">{bound ? 'bound' : plusMinus}</span>}

@@ -12,6 +12,7 @@ export function WarningsBlock({ capture, record }: { capture: Capture; record: S
     ({ code }) => !warnings.some((warning) => warning.code === code),
   );
   if (warnings.length === 0 && ofFile.length === 0) {
+    if (!record) return null; // nothing was looked at yet, so nothing can be said
     return (
       <MarginBlock title="Warnings">
         <p className="bl-ink-2">None.</p>

@@ -5,7 +5,7 @@ const SWEEP_WIDTH = 400;
 const MIDDLE = 418;
 /** A sweep that falls in frequency and grows, as the lark's first wave takes it over. */
 const FIRST_CYCLES_PER_UNIT = 0.036;
-const LAST_CYCLES_PER_UNIT = 0.0078;
+const LAST_CYCLES_PER_UNIT = 0.0098;
 
 function sweepPath(): string {
   const ratio = Math.log(LAST_CYCLES_PER_UNIT / FIRST_CYCLES_PER_UNIT);
@@ -15,7 +15,7 @@ function sweepPath(): string {
   const end = cyclesTo(SWEEP_WIDTH);
   return Array.from({ length: STEPS + 1 }, (_, n) => {
     const x = (n / STEPS) * SWEEP_WIDTH;
-    const height = 2 + 36 * (x / SWEEP_WIDTH) ** 2;
+    const height = 2 + 46 * (x / SWEEP_WIDTH) ** 2;
     const y = MIDDLE + height * Math.sin(2 * Math.PI * (cyclesTo(x) - end));
     return `${n === 0 ? 'M' : 'L'}${x.toFixed(1)} ${y.toFixed(1)}`;
   }).join('');
@@ -24,7 +24,7 @@ function sweepPath(): string {
 const SWEEP = sweepPath();
 /** The lark of the mark from its first wave on, 6.2 times its size; its line begins where the sweep ends. */
 const LARK =
-  'M9.6 33S15 39.8 17.6 33.6C20.6 26.6 27 25 33 23.4 37 22.3 38.6 17.2 37 12 42.3 12.4 46.6 14.4 48.4 18L58 14.4 50.4 22.8C51.8 34 46.6 43.4 37.2 47 29.5 50 19.5 49.4 7 58.5 16.5 47.4 31 45.6 38 33';
+  'M9.6 33C11.8 39.5 15 39.8 17.6 33.6C20.6 26.6 27 25 33 23.4 37 22.3 38.6 17.2 37 12 42.3 12.4 46.6 14.4 48.4 18L58 14.4 50.4 22.8C51.8 34 46.6 43.4 37.2 47 29.5 50 19.5 49.4 7 58.5 16.5 47.4 31 45.6 38 33';
 const LARK_SCALE = 7.7;
 
 /** Decoration only: graph paper with one stroke on it. */
