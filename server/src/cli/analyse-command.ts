@@ -10,6 +10,7 @@ import {
 } from '@benchlark/dsp';
 import { hashFile } from '../files/hash-file';
 import type { CliIo } from './cli-io';
+import { namingFile } from './name-failure';
 import { withWav } from './open-capture';
 import {
   parseCommand,
@@ -45,7 +46,8 @@ async function readOption<T>(
   parse: (json: unknown) => T,
 ): Promise<T | null> {
   const file = readText(command, name);
-  return file === undefined ? null : parse(await readJson(path.resolve(io.cwd, file), file));
+  if (file === undefined) return null;
+  return namingFile(file, async () => parse(await readJson(path.resolve(io.cwd, file), file)));
 }
 
 export async function runAnalyse(args: readonly string[], io: CliIo): Promise<void> {
@@ -64,12 +66,14 @@ export async function runAnalyse(args: readonly string[], io: CliIo): Promise<vo
   const measure = readChoice(command, 'measure', MEASURE_IDS);
   const descriptor = await readOption(command, io, 'stimulus', parseDescriptor);
   const progress = createProgressLine(io, `${shownName}: analysing`);
-  const { record, recognition } = await withWav(file, async (wav) =>
-    analyseCapture(
-      wav,
-      await hashFile(file),
-      { measure, settings, descriptor },
-      { onProgress: progress.show },
+  const { record, recognition } = await namingFile(shownName, () =>
+    withWav(file, async (wav) =>
+      analyseCapture(
+        wav,
+        await hashFile(file),
+        { measure, settings, descriptor },
+        { onProgress: progress.show },
+      ),
     ),
   ).finally(progress.clear);
   if (command.values['json']) {

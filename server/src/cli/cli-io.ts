@@ -24,6 +24,8 @@ export class CliError extends Error {
   constructor(
     readonly exitCode: ExitCode,
     message: string,
+    /** Whether the message begins with the file it is about. */
+    readonly namesFile = exitCode !== EXIT.wrongUsage,
   ) {
     super(message);
   }

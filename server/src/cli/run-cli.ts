@@ -31,9 +31,15 @@ function bindNegativeNumbers(args: readonly string[]): string[] {
   return bound;
 }
 
-/** The file an error line names: the first word that isn't an option. */
+/** Options without a value. */
+const SWITCHES: ReadonlySet<string> = new Set(['--json', '--bare', '--help']);
+
+/** The file an error line names: the first word that is neither an option nor an option's value. */
 function subjectOf(name: string, args: readonly string[]): string {
-  return args.find((word) => !word.startsWith('-')) ?? name;
+  const isOption = (word: string | undefined) => word?.startsWith('-') === true;
+  const takesNext = (word: string | undefined) =>
+    word !== undefined && isOption(word) && !word.includes('=') && !SWITCHES.has(word);
+  return args.find((word, index) => !isOption(word) && !takesNext(args[index - 1])) ?? name;
 }
 
 /**
@@ -59,8 +65,8 @@ export async function runCli(argv: readonly string[], io: CliIo): Promise<ExitCo
   } catch (error) {
     const failure = describeFailure(error);
     if (!failure) throw error;
-    const isWhole = error instanceof CliError;
-    const subject = isWhole && failure.exitCode !== EXIT.wrongUsage ? '' : `${subjectOf(name, args)}: `;
+    const namesFile = error instanceof CliError && error.namesFile;
+    const subject = namesFile ? '' : `${subjectOf(name, args)}: `;
     io.err(`benchlark: ${subject}${failure.message}\n`);
     return failure.exitCode;
   }

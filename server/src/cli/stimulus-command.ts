@@ -6,6 +6,7 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { createStimulus, encodeWavBlocks, type StimulusBits } from '@benchlark/dsp';
 import { CliError, EXIT, type CliIo } from './cli-io';
+import { namingFile } from './name-failure';
 import { parseCommand, readChoice, readNumber, readText, takeOne } from './parse-command';
 
 const OPTIONS = {
@@ -73,9 +74,11 @@ export async function runStimulus(args: readonly string[], io: CliIo): Promise<v
   });
   const { dither, seed } = stimulus.describe('');
   const file = path.resolve(io.cwd, out);
-  const sha256 = await writeHashed(file, encodeWavBlocks(stimulus.source, { bits, dither, seed }));
   const descriptorFile = file.replace(/\.wav$/, '.json');
-  await writeFile(descriptorFile, `${JSON.stringify(stimulus.describe(sha256), null, 2)}\n`);
+  await namingFile(out, async () => {
+    const sha256 = await writeHashed(file, encodeWavBlocks(stimulus.source, { bits, dither, seed }));
+    await writeFile(descriptorFile, `${JSON.stringify(stimulus.describe(sha256), null, 2)}\n`);
+  });
   io.out(`${out} and ${path.basename(descriptorFile)} written\n`);
   io.err(
     'Before you play it: disconnect loudspeakers and headphones, start with the volume down. A test tone can destroy tweeters and hearing.\n',

@@ -2,6 +2,7 @@ import path from 'node:path';
 import { analyseCapture, compareRecords, DSP_VERSION, parseRecord, toRecordJson } from '@benchlark/dsp';
 import { hashFile } from '../files/hash-file';
 import { CliError, EXIT, type CliIo } from './cli-io';
+import { namingFile } from './name-failure';
 import { withWav } from './open-capture';
 import { parseCommand } from './parse-command';
 import { readJson } from './read-json';
@@ -13,21 +14,21 @@ export async function runVerify(args: readonly string[], io: CliIo): Promise<voi
   if (recordName === undefined || fileName === undefined || surplus !== undefined) {
     throw new CliError(EXIT.wrongUsage, 'verify takes a record and a recording: verify RECORD.json FILE.wav');
   }
-  const stored = parseRecord(await readJson(path.resolve(io.cwd, recordName), recordName));
+  const stored = await namingFile(recordName, async () =>
+    parseRecord(await readJson(path.resolve(io.cwd, recordName), recordName)),
+  );
   const file = path.resolve(io.cwd, fileName);
-  const sha256 = await hashFile(file);
+  const sha256 = await namingFile(fileName, () => hashFile(file));
   if (sha256 !== stored.capture.sha256) {
     throw new CliError(
       EXIT.disagrees,
       `${fileName}: its bytes are not those the record was made from (SHA-256 ${sha256}, the record says ${stored.capture.sha256})`,
     );
   }
-  const { record } = await withWav(file, (wav) =>
-    analyseCapture(
-      wav,
-      sha256,
-      { measure: stored.measure, settings: stored.settings, descriptor: stored.settings.descriptor },
-      {},
+  const { measure, settings } = stored;
+  const { record } = await namingFile(fileName, () =>
+    withWav(file, (wav) =>
+      analyseCapture(wav, sha256, { measure, settings, descriptor: settings.descriptor }, {}),
     ),
   );
   const differences = compareRecords(stored, toRecordJson(record, { traces: 'none' }));
