@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import type { CaptureDto } from '../src/captures/dto/capture.dto';
+import { CaptureEvents } from '../src/events/capture-events.service';
 import type { JobDto } from '../src/jobs/dto/job.dto';
 import { createBench, type Bench } from './support/bench';
 import { waitFor } from './support/wait-for';
@@ -176,6 +177,30 @@ describe('worker', () => {
     );
     await start();
     await done(id);
+  });
+
+  it('goes on, and its events with it, after the database has dropped every connection', async () => {
+    const worker = await start();
+    const seen: string[] = [];
+    const subscription = bench.app.get(CaptureEvents).all.subscribe(({ captureId }) => seen.push(captureId));
+    await bench.dataSource
+      .query(
+        `SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = current_database() AND pid <> pg_backend_pid()`,
+      )
+      .catch(() => undefined); // its own pool loses connections as well
+    const { id } = await waitFor(
+      () => bench.upload(wavBytes({ seed: 84 })).then(({ body }) => body as CaptureDto),
+      (capture) => capture.id !== undefined,
+    );
+    await done(id);
+    expect(worker.child.exitCode).toBeNull();
+    const again = await bench.uploaded(wavBytes({ seed: 85 }));
+    await done(again.id);
+    await waitFor(
+      () => Promise.resolve(seen),
+      (ids) => ids.includes(again.id),
+    );
+    subscription.unsubscribe();
   });
 
   it('shares one queue with another worker, each job once', async () => {
