@@ -1,4 +1,7 @@
+import { createGaussian } from '../random/create-gaussian.js';
 import { createRandom, type Random } from '../random/create-random.js';
+
+export { createGaussian };
 
 export interface Partial {
   readonly frequencyHz: number;
@@ -47,22 +50,6 @@ export function sine(
 /** A sine of `cycles` cycles in `length` samples; a whole number of cycles is exactly periodic. */
 export function sineOfCycles(length: number, cycles: number, amplitude = 1, phaseRad = 0): Float64Array {
   return sine(length, length, cycles, amplitude, phaseRad);
-}
-
-/** Standard normal values. @see G. E. P. Box and M. E. Muller, Ann. Math. Stat. 29(2), 1958 */
-export function createGaussian(random: Random): () => number {
-  let spare: number | null = null;
-  return () => {
-    if (spare !== null) {
-      const value = spare;
-      spare = null;
-      return value;
-    }
-    const radius = Math.sqrt(-2 * Math.log(1 - random()));
-    const angle = 2 * Math.PI * random();
-    spare = radius * Math.sin(angle);
-    return radius * Math.cos(angle);
-  };
 }
 
 /** White Gaussian noise. @param rms - standard deviation, FS */
