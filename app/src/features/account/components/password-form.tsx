@@ -10,14 +10,15 @@ import type { components } from '@/lib/api-types';
 import { placeErrors } from '@/lib/form-errors';
 import { accountQueries } from '../api/account-queries';
 
-const LEAST_LENGTH = 12;
+/** As the server has it: NIST SP 800-63B, 5.1.1.2. */
+const LEAST_LENGTH = 8;
 
 const passwordSchema = z.object({
   currentPassword: z.string().min(1, 'Type the password you have now'),
   newPassword: z
     .string()
     .min(LEAST_LENGTH, `At least ${LEAST_LENGTH} characters`)
-    .max(200, 'At most 200 characters'),
+    .max(128, 'At most 128 characters'),
 }) satisfies z.ZodType<components['schemas']['ChangePasswordDto']>;
 
 type PasswordValues = z.infer<typeof passwordSchema>;

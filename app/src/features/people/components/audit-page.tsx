@@ -1,6 +1,6 @@
 import { Button } from '@radix-ui/themes';
 import { useInfiniteQuery } from '@tanstack/react-query';
-import { useSearchParams } from 'react-router-dom';
+import { Link, useSearchParams } from 'react-router-dom';
 import { TextInput } from '@/components/forms/field';
 import { FailedState, LoadingState, NoRows } from '@/components/states/states';
 import { errorWords } from '@/lib/error-words';
@@ -61,8 +61,8 @@ export function AuditPage() {
                     <code>{action}</code>
                   </td>
                   <td>
-                    {subject}
-                    <span className="bl-table-second">{detail === null ? null : detailWords(detail)}</span>
+                    <Subject subject={subject} />
+                    <span className="bl-table-second">{detail}</span>
                   </td>
                   <td className="bl-mono">{ip}</td>
                 </tr>
@@ -88,6 +88,16 @@ export function AuditPage() {
   );
 }
 
-function detailWords(detail: unknown): string {
-  return typeof detail === 'string' ? detail : JSON.stringify(detail);
+const SUBJECT_PAGES: Readonly<Record<string, string>> = {
+  capture: '/captures/',
+  record: '/records/',
+  unit: '/units/',
+};
+
+/** The trail names its subjects "kind:id"; what has a page is linked. */
+function Subject({ subject }: { subject: string | null }) {
+  const [kind = '', id = ''] = subject?.split(':') ?? [];
+  const page = SUBJECT_PAGES[kind];
+  if (page && id) return <Link to={page + id}>this {kind}</Link>;
+  return <>{subject}</>;
 }

@@ -4,14 +4,14 @@ import type { components } from '@/lib/api-types';
 type Schemas = components['schemas'];
 
 /** NIST SP 800-63B, 5.1.1.2: length counts, not a mixture of signs. The server has the last word. */
-const LEAST_PASSWORD_LENGTH = 12;
+const LEAST_PASSWORD_LENGTH = 8;
 
 export const PASSWORD_HELP = `At least ${LEAST_PASSWORD_LENGTH} characters. A few unrelated words are easy to keep and hard to guess.`;
 
 export const newPassword = z
   .string()
   .min(LEAST_PASSWORD_LENGTH, `At least ${LEAST_PASSWORD_LENGTH} characters`)
-  .max(200, 'At most 200 characters');
+  .max(128, 'At most 128 characters');
 const email = z.email('This does not read as an e-mail address');
 const displayName = z
   .string()
