@@ -60,3 +60,4 @@ export * from './practice/parse-device.js';
 export * from './practice/apply-device.js';
 export * from './practice/practice-devices.js';
 export * from './stimulus/locate-marks.js';
+export { HIGHEST_RATE_HZ, LOWEST_RATE_HZ, MOST_CHANNELS } from './wav/read-format.js';

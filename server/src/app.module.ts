@@ -8,6 +8,12 @@ import { EnvModule } from './config/env.module';
 import type { Env } from './config/env.schema';
 import { DatabaseModule } from './database/database.module';
 import { HealthModule } from './health/health.module';
+import { AuthModule } from './auth/auth.module';
+import { BenchModule } from './bench/bench.module';
+import { InvitationsModule } from './invitations/invitations.module';
+import { MailModule } from './mail/mail.module';
+import { MeModule } from './me/me.module';
+import { PeopleModule } from './people/people.module';
 import { CapturesModule } from './captures/captures.module';
 import { EventsModule } from './events/events.module';
 import { JobsModule } from './jobs/jobs.module';
@@ -31,6 +37,12 @@ export class AppModule {
         HealthModule,
         AuditModule,
         AccessModule,
+        MailModule,
+        PeopleModule,
+        BenchModule,
+        AuthModule,
+        MeModule,
+        InvitationsModule,
         StorageModule,
         UnitsModule,
         RigsModule,

@@ -1,4 +1,5 @@
 import 'reflect-metadata';
+import { BenchService } from './bench/bench.service';
 import { createApp } from './create-app';
 import { endGracefully } from './common/graceful-shutdown';
 import { readEnv } from './config/env.schema';
@@ -10,6 +11,12 @@ async function main(): Promise<void> {
   const app = await createApp(env);
   endGracefully(app, env);
   await app.listen(env.PORT, env.HOST);
+  const secret = await app.get(BenchService).makeSetupSecret();
+  if (secret !== null) {
+    process.stdout.write(
+      `Nobody has an account yet. One-time secret for the first administrator: ${secret}\n`,
+    );
+  }
   process.stdout.write(`Benchlark listens on ${await app.getUrl()} for ${env.PUBLIC_URL}\n`);
 }
 

@@ -4,1914 +4,2406 @@
  */
 
 export interface paths {
-    "/api/session": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/session"];
-        put?: never;
-        post: operations["post/session"];
-        delete: operations["delete/session"];
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+  '/api/health/live': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/setup": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/setup"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getLive'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/health/ready': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/password-resets": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/password-resets"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getReady'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/audit': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/password-resets/complete": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/password-resets/complete"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listAuditEntries'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/mail': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/invitations/look": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/invitations/look"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listMail'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/people': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/invitations/accept": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/invitations/accept"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listPeople'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/people/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/me"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch: operations["patch/me"];
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updatePerson'];
+    trace?: never;
+  };
+  '/api/people/{id}/password-reset': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me/password": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/me/password"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['sendPasswordReset'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/password-resets': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me/sessions": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/me/sessions"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['askPasswordReset'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/password-resets/complete': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me/sessions/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete: operations["delete/me/sessions/{id}"];
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['completePasswordReset'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/setup': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me/tokens": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/me/tokens"];
-        put?: never;
-        post: operations["post/me/tokens"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['setUp'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/session': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/me/tokens/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete: operations["delete/me/tokens/{id}"];
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getSession'];
+    put?: never;
+    post: operations['signIn'];
+    delete: operations['signOut'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/me': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/people": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/people"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getMe'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updateMe'];
+    trace?: never;
+  };
+  '/api/me/password': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/people/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch: operations["patch/people/{id}"];
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['changePassword'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/me/sessions': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/people/{id}/password-reset": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/people/{id}/password-reset"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listSessions'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/me/sessions/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/invitations": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/invitations"];
-        put?: never;
-        post: operations["post/invitations"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete: operations['endSession'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/me/tokens': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/invitations/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete: operations["delete/invitations/{id}"];
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listTokens'];
+    put?: never;
+    post: operations['createToken'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/me/tokens/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/audit": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/audit"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete: operations['removeToken'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/invitations': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/mail": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/mail"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listInvitations'];
+    put?: never;
+    post: operations['createInvitation'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/invitations/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/units": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/units"];
-        put?: never;
-        post: operations["post/units"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete: operations['revokeInvitation'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/invitations/look': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/units/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/units/{id}"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch: operations["patch/units/{id}"];
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['lookAtInvitation'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/invitations/accept': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/units/{id}/conditions": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/units/{id}/conditions"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['acceptInvitation'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/units': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/conditions/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch: operations["patch/conditions/{id}"];
-        trace?: never;
+    get: operations['listUnits'];
+    put?: never;
+    post: operations['createUnit'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/units/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/rigs": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/rigs"];
-        put?: never;
-        post: operations["post/rigs"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getUnit'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updateUnit'];
+    trace?: never;
+  };
+  '/api/units/{id}/conditions': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/captures": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/captures"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['createCondition'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/conditions/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/captures/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/captures/{id}"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch: operations["patch/captures/{id}"];
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updateCondition'];
+    trace?: never;
+  };
+  '/api/rigs': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/captures/{id}/overview": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/captures/{id}/overview"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listRigs'];
+    put?: never;
+    post: operations['createRig'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/jobs': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/captures/{id}/records": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/captures/{id}/records"];
-        put?: never;
-        post: operations["post/captures/{id}/records"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listJobs'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/jobs/{id}/retry': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/records/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/records/{id}"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post: operations['retryJob'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/jobs/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/records/{id}/verify": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/records/{id}/verify"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get?: never;
+    put?: never;
+    post?: never;
+    delete: operations['cancelJob'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/captures': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/jobs": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/jobs"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['listCaptures'];
+    put?: never;
+    post: operations['uploadCapture'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/captures/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/jobs/{id}/retry": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post: operations["post/jobs/{id}/retry"];
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getCapture'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updateCapture'];
+    trace?: never;
+  };
+  '/api/captures/{id}/file': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/jobs/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get?: never;
-        put?: never;
-        post?: never;
-        delete: operations["delete/jobs/{id}"];
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['downloadCapture'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/captures/{id}/overview': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "/api/today": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        get: operations["get/today"];
-        put?: never;
-        post?: never;
-        delete?: never;
-        options?: never;
-        head?: never;
-        patch?: never;
-        trace?: never;
+    get: operations['getOverview'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/captures/{id}/records': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
+    get: operations['listRecords'];
+    put?: never;
+    post: operations['requestRecord'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/records/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['getRecord'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/records/{id}/traces/{sha256}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['downloadTrace'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/records/{id}/download': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['downloadRecord'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/records/{id}/verify': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get?: never;
+    put?: never;
+    post: operations['verifyRecord'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/events': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['streamEvents'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/captures/{id}/events': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['streamCaptureEvents'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/today': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['getToday'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
 }
 export type webhooks = Record<string, never>;
 export interface components {
-    schemas: {
-        DemoAccountDto: {
-            displayName: string;
-            email: string;
-            password: string;
-            roles: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-        };
-        DemoDto: {
-            accounts: components["schemas"]["DemoAccountDto"][];
-        };
-        LimitsDto: {
-            maxUploadBytes: number;
-            acceptedSampleFormats: string[];
-            minSampleRateHz: number;
-            maxSampleRateHz: number;
-            maxChannels: number;
-        };
-        PersonDto: {
-            id: string;
-            displayName: string;
-            email: string;
-            roles: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-            isDisabled: boolean;
-            createdAt: string;
-            lastSeenAt: string | null;
-        };
-        SessionDto: {
-            person: components["schemas"]["PersonDto"] | null;
-            csrfToken: string;
-            firstRun: boolean;
-            benchName: string;
-            demo: components["schemas"]["DemoDto"] | null;
-            hasMailPage: boolean;
-            limits: components["schemas"]["LimitsDto"];
-        };
-        SignInDto: {
-            email: string;
-            password: string;
-        };
-        SetupDto: {
-            secret: string;
-            benchName: string;
-            displayName: string;
-            email: string;
-            password: string;
-        };
-        AskPasswordResetDto: {
-            email: string;
-        };
-        CompletePasswordResetDto: {
-            token: string;
-            password: string;
-        };
-        InvitationTokenDto: {
-            token: string;
-        };
-        InvitationLookDto: {
-            email: string | null;
-            roles: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-            invitedBy: string;
-            benchName: string;
-            expiresAt: string;
-        };
-        AcceptInvitationDto: {
-            token: string;
-            displayName: string;
-            email?: string;
-            password: string;
-        };
-        UpdateMeDto: {
-            displayName?: string;
-        };
-        ChangePasswordDto: {
-            currentPassword: string;
-            newPassword: string;
-        };
-        SessionRowDto: {
-            id: string;
-            createdAt: string;
-            lastSeenAt: string;
-            userAgent: string;
-            isCurrent: boolean;
-        };
-        ApiTokenDto: {
-            id: string;
-            name: string;
-            createdAt: string;
-            lastUsedAt: string | null;
-        };
-        CreateApiTokenDto: {
-            name: string;
-        };
-        CreatedApiTokenDto: {
-            id: string;
-            name: string;
-            token: string;
-        };
-        PeopleDto: {
-            items: components["schemas"]["PersonDto"][];
-        };
-        UpdatePersonDto: {
-            roles?: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-            isDisabled?: boolean;
-        };
-        InvitationDto: {
-            id: string;
-            email: string | null;
-            roles: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-            link: string | null;
-            isMailed: boolean;
-            createdAt: string;
-            expiresAt: string;
-            invitedBy: string;
-            acceptedAt: string | null;
-        };
-        InvitationsDto: {
-            items: components["schemas"]["InvitationDto"][];
-        };
-        CreateInvitationDto: {
-            email?: string;
-            roles: ("technician" | "reviewer" | "peer" | "administrator" | "reader")[];
-        };
-        AuditEntryDto: {
-            id: string;
-            at: string;
-            actorName: string | null;
-            action: string;
-            subject: string | null;
-            detail: string | null;
-            ip: string | null;
-        };
-        AuditPageDto: {
-            items: components["schemas"]["AuditEntryDto"][];
-            nextCursor: string | null;
-        };
-        SentMailDto: {
-            id: string;
-            at: string;
-            to: string;
-            subject: string;
-            text: string;
-        };
-        SentMailsDto: {
-            items: components["schemas"]["SentMailDto"][];
-        };
-        ConditionDto: {
-            id: string;
-            name: string;
-            notes: string;
-            startedOn: string | null;
-            captureCount: number;
-        };
-        CreateConditionDto: {
-            name: string;
-            notes?: string;
-            startedOn?: string;
-        };
-        UpdateConditionDto: {
-            name?: string;
-            notes?: string;
-            startedOn?: string | null;
-        };
-        UnitDto: {
-            id: string;
-            maker: string;
-            model: string;
-            serialNumber: string | null;
-            /** @enum {string} */
-            kind: "converter" | "headphone-amplifier" | "power-amplifier" | "streamer" | "phono-stage" | "other";
-            notes: string;
-            createdAt: string;
-            captureCount: number;
-            conditions: components["schemas"]["ConditionDto"][];
-        };
-        UnitPageDto: {
-            items: components["schemas"]["UnitDto"][];
-            nextCursor: string | null;
-            total: number;
-        };
-        CreateUnitDto: {
-            maker: string;
-            model: string;
-            serialNumber?: string;
-            /** @enum {string} */
-            kind?: "converter" | "headphone-amplifier" | "power-amplifier" | "streamer" | "phono-stage" | "other";
-            notes?: string;
-        };
-        UpdateUnitDto: {
-            maker?: string;
-            model?: string;
-            serialNumber?: string | null;
-            /** @enum {string} */
-            kind?: "converter" | "headphone-amplifier" | "power-amplifier" | "streamer" | "phono-stage" | "other";
-            notes?: string;
-        };
-        RigDto: {
-            id: string;
-            name: string;
-            notes: string;
-            createdAt: string;
-        };
-        RigsDto: {
-            items: components["schemas"]["RigDto"][];
-        };
-        CreateRigDto: {
-            name: string;
-            notes?: string;
-        };
-        FileWarningDto: {
-            code: string;
-            message: string;
-        };
-        FailureDto: {
-            code: string;
-            message: string;
-            attempts: number;
-        };
-        PersonNameDto: {
-            id: string;
-            displayName: string;
-        };
-        UnitRefDto: {
-            id: string;
-            maker: string;
-            model: string;
-            serialNumber: string | null;
-        };
-        NamedRefDto: {
-            id: string;
-            name: string;
-        };
-        CaptureRefDto: {
-            id: string;
-            number: number;
-        };
-        MainFigureDto: {
-            key: string;
-            value: number;
-            unit: string;
-            channel: string;
-            limitBy: string | null;
-            marginDb: number | null;
-        };
-        RecordSummaryDto: {
-            id: string;
-            ordinal: number;
-            measure: string;
-            dspVersion: string;
-            createdAt: string;
-            supersededById: string | null;
-            supersedesId: string | null;
-            mainFigure: components["schemas"]["MainFigureDto"] | null;
-            warningCount: number;
-            sketch: number[][];
-            recognisedAs: string;
-            stimulusName: string | null;
-            fundamentalFrequencyHz: number | null;
-            fundamentalLevelDbfs: number | null;
-        };
-        RecordListDto: {
-            items: components["schemas"]["RecordSummaryDto"][];
-        };
-        CaptureDto: {
-            id: string;
-            number: number;
-            fileName: string;
-            sizeBytes: number;
-            sha256: string;
-            uploadedAt: string;
-            uploadedBy: components["schemas"]["PersonNameDto"];
-            note: string;
-            unit: components["schemas"]["UnitRefDto"] | null;
-            condition: components["schemas"]["NamedRefDto"] | null;
-            rig: components["schemas"]["NamedRefDto"] | null;
-            sampleRateHz: number;
-            channelCount: number;
-            bitsPerSample: number;
-            sampleFormat: string;
-            frameCount: number;
-            durationS: number;
-            fileWarnings: components["schemas"]["FileWarningDto"][];
-            sameBytesAs: components["schemas"]["CaptureRefDto"][];
-            /** @enum {string} */
-            evidence: "sound" | "damaged" | "missing";
-            checkedAt: string | null;
-            /** @enum {string} */
-            state: "queued" | "analysing" | "done" | "failed" | "cancelled";
-            progress: number | null;
-            failure: components["schemas"]["FailureDto"] | null;
-            record: components["schemas"]["RecordSummaryDto"] | null;
-        };
-        CapturePageDto: {
-            items: components["schemas"]["CaptureDto"][];
-            nextCursor: string | null;
-            total: number;
-            totalAll: number;
-            totalBytes: number;
-        };
-        UpdateCaptureDto: {
-            unitId?: string | null;
-            conditionId?: string | null;
-            rigId?: string | null;
-            note?: string;
-        };
-        OverviewChannelDto: {
-            min: number[];
-            max: number[];
-        };
-        OverviewDto: {
-            framesPerBin: number;
-            channels: components["schemas"]["OverviewChannelDto"][];
-        };
-        AnalyseDto: {
-            measure?: string;
-            fromS?: number;
-            toS?: number;
-            bandLowHz?: number;
-            bandHighHz?: number;
-            highestHarmonic?: number;
-        };
-        QueuedAnalysisDto: {
-            jobId: string;
-            isNew: boolean;
-        };
-        RecordDetailDto: {
-            id: string;
-            ordinal: number;
-            measure: string;
-            dspVersion: string;
-            createdAt: string;
-            supersededById: string | null;
-            supersedesId: string | null;
-            mainFigure: components["schemas"]["MainFigureDto"] | null;
-            warningCount: number;
-            sketch: number[][];
-            recognisedAs: string;
-            stimulusName: string | null;
-            fundamentalFrequencyHz: number | null;
-            fundamentalLevelDbfs: number | null;
-            captureId: string;
-            isCurrent: boolean;
-            record: {
-                [key: string]: unknown;
-            };
-        };
-        DifferenceDto: {
-            path: string;
-            stored: {
-                [key: string]: unknown;
-            };
-            computed: {
-                [key: string]: unknown;
-            };
-        };
-        VerificationDto: {
-            isEqual: boolean;
-            differing: components["schemas"]["DifferenceDto"][];
-            /** @enum {string} */
-            evidence: "sound" | "damaged" | "missing";
-            dspVersion: string;
-        };
-        JobDto: {
-            id: string;
-            kind: string;
-            captureId: string | null;
-            captureNumber: number | null;
-            /** @enum {string} */
-            state: "queued" | "analysing" | "done" | "failed" | "cancelled";
-            progress: number | null;
-            attempts: number;
-            maxAttempts: number;
-            failure: components["schemas"]["FailureDto"] | null;
-            createdAt: string;
-            startedAt: string | null;
-            endedAt: string | null;
-        };
-        JobsDto: {
-            items: components["schemas"]["JobDto"][];
-        };
-        TodayCountDto: {
-            count: number;
-            captures: components["schemas"]["CaptureDto"][];
-        };
-        TodayItemsDto: {
-            items: components["schemas"]["CaptureDto"][];
-        };
-        DamagedDto: {
-            count: number;
-        };
-        LogEntryDto: {
-            at: string;
-            text: string;
-            captureId?: string | null;
-            actorName: string | null;
-        };
-        TodayDto: {
-            unsorted: components["schemas"]["TodayCountDto"];
-            failed: components["schemas"]["TodayCountDto"];
-            underWay: components["schemas"]["TodayItemsDto"];
-            recent: components["schemas"]["TodayItemsDto"];
-            damaged: components["schemas"]["DamagedDto"];
-            log: components["schemas"]["LogEntryDto"][];
-        };
+  schemas: {
+    LiveDto: {
+      /** @enum {string} */
+      status: 'ok';
     };
-    responses: never;
-    parameters: never;
-    requestBodies: never;
-    headers: never;
-    pathItems: never;
+    ReadyDto: {
+      /** @enum {string} */
+      status: 'ready' | 'not-ready' | 'shutting-down';
+      /** @description Each component by its name */
+      components: {
+        [key: string]: 'up' | 'down';
+      };
+    };
+    AuditEntryDto: {
+      id: string;
+      /** Format: date-time */
+      at: string;
+      /** @description As the name was then; null for the server itself */
+      actorName: string | null;
+      /** @example person.roles-changed */
+      action: string;
+      /** @description kind:id */
+      subject: string | null;
+      detail: string | null;
+      ip: string | null;
+    };
+    AuditPageDto: {
+      items: components['schemas']['AuditEntryDto'][];
+      nextCursor: string | null;
+    };
+    MailDto: {
+      id: string;
+      /** Format: date-time */
+      at: string;
+      to: string;
+      subject: string;
+      text: string;
+    };
+    MailListDto: {
+      items: components['schemas']['MailDto'][];
+    };
+    /** @enum {string} */
+    Role: 'technician' | 'reviewer' | 'peer' | 'administrator' | 'reader';
+    PersonDto: {
+      /** Format: uuid */
+      id: string;
+      displayName: string;
+      /** Format: email */
+      email: string;
+      roles: components['schemas']['Role'][];
+      isDisabled: boolean;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      lastSeenAt: string | null;
+    };
+    PeopleListDto: {
+      items: components['schemas']['PersonDto'][];
+    };
+    UpdatePersonDto: {
+      roles?: components['schemas']['Role'][];
+      isDisabled?: boolean;
+    };
+    AskPasswordResetDto: {
+      /** Format: email */
+      email: string;
+    };
+    CompletePasswordResetDto: {
+      token: string;
+      password: string;
+    };
+    SetupDto: {
+      secret: string;
+      benchName: string;
+      displayName: string;
+      /** Format: email */
+      email: string;
+      password: string;
+    };
+    DemoAccountDto: {
+      displayName: string;
+      /** Format: email */
+      email: string;
+      password: string;
+      roles: components['schemas']['Role'][];
+    };
+    DemoDto: {
+      accounts: components['schemas']['DemoAccountDto'][];
+    };
+    LimitsDto: {
+      maxUploadBytes: number;
+      acceptedSampleFormats: string[];
+      minSampleRateHz: number;
+      maxSampleRateHz: number;
+      maxChannels: number;
+    };
+    SessionDto: {
+      person: components['schemas']['PersonDto'] | null;
+      /** @description Goes into the header x-csrf-token of every request that changes something */
+      csrfToken: string;
+      /** @description True until the first administrator has been made */
+      firstRun: boolean;
+      benchName: string;
+      demo: components['schemas']['DemoDto'] | null;
+      /** @description True when mails are kept on a page instead of being sent */
+      hasMailPage: boolean;
+      limits: components['schemas']['LimitsDto'];
+    };
+    SignInDto: {
+      /** Format: email */
+      email: string;
+      password: string;
+    };
+    UpdateMeDto: {
+      displayName?: string;
+    };
+    ChangePasswordDto: {
+      currentPassword: string;
+      newPassword: string;
+    };
+    OwnSessionDto: {
+      /** Format: uuid */
+      id: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      lastSeenAt: string;
+      userAgent: string;
+      isCurrent: boolean;
+    };
+    ApiTokenDto: {
+      /** Format: uuid */
+      id: string;
+      name: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      lastUsedAt: string | null;
+    };
+    CreateApiTokenDto: {
+      name: string;
+    };
+    MadeApiTokenDto: {
+      /** Format: uuid */
+      id: string;
+      name: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      lastUsedAt: string | null;
+      /** @description The token itself; it is shown this once */
+      token: string;
+    };
+    InvitationDto: {
+      /** Format: uuid */
+      id: string;
+      /** Format: email */
+      email: string | null;
+      roles: components['schemas']['Role'][];
+      invitedBy: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      expiresAt: string;
+    };
+    InvitationListDto: {
+      items: components['schemas']['InvitationDto'][];
+    };
+    CreateInvitationDto: {
+      /** Format: email */
+      email?: string;
+      roles: components['schemas']['Role'][];
+    };
+    MadeInvitationDto: {
+      /** Format: uuid */
+      id: string;
+      /** Format: email */
+      email: string | null;
+      roles: components['schemas']['Role'][];
+      invitedBy: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      expiresAt: string;
+      /** @description To be copied; it is shown this once */
+      link: string;
+      isMailed: boolean;
+    };
+    LookAtInvitationDto: {
+      token: string;
+    };
+    InvitationLookDto: {
+      /**
+       * Format: email
+       * @description Set when only this address may accept
+       */
+      email: string | null;
+      roles: components['schemas']['Role'][];
+      invitedBy: string;
+      benchName: string;
+      /** Format: date-time */
+      expiresAt: string;
+    };
+    AcceptInvitationDto: {
+      token: string;
+      displayName: string;
+      /** Format: email */
+      email?: string;
+      password: string;
+    };
+    /** @enum {string} */
+    UnitKind: 'converter' | 'headphone-amplifier' | 'power-amplifier' | 'streamer' | 'phono-stage' | 'other';
+    ConditionDto: {
+      /** Format: uuid */
+      id: string;
+      name: string;
+      notes: string;
+      /** Format: date */
+      startedOn: string | null;
+      captureCount: number;
+    };
+    UnitDto: {
+      /** Format: uuid */
+      id: string;
+      maker: string;
+      model: string;
+      serialNumber: string | null;
+      kind: components['schemas']['UnitKind'];
+      notes: string;
+      /** Format: date-time */
+      createdAt: string;
+      captureCount: number;
+      conditions: components['schemas']['ConditionDto'][];
+    };
+    UnitListDto: {
+      items: components['schemas']['UnitDto'][];
+      nextCursor: string | null;
+      total: number;
+    };
+    CreateUnitDto: {
+      maker: string;
+      model: string;
+      serialNumber?: string | null;
+      kind?: components['schemas']['UnitKind'];
+      notes?: string;
+    };
+    UnitDetailDto: {
+      /** Format: uuid */
+      id: string;
+      maker: string;
+      model: string;
+      serialNumber: string | null;
+      kind: components['schemas']['UnitKind'];
+      notes: string;
+      /** Format: date-time */
+      createdAt: string;
+      captureCount: number;
+      conditions: components['schemas']['ConditionDto'][];
+      /** @description Captures of the unit that no condition was given for */
+      captureCountWithoutCondition: number;
+      /** Format: date-time */
+      lastCaptureAt: string | null;
+    };
+    UpdateUnitDto: {
+      maker?: string;
+      model?: string;
+      serialNumber?: string | null;
+      kind?: components['schemas']['UnitKind'];
+      notes?: string;
+    };
+    CreateConditionDto: {
+      name: string;
+      notes?: string;
+      /** Format: date */
+      startedOn?: string | null;
+    };
+    UpdateConditionDto: {
+      name?: string;
+      notes?: string;
+      /** Format: date */
+      startedOn?: string | null;
+    };
+    RigDto: {
+      /** Format: uuid */
+      id: string;
+      name: string;
+      notes: string;
+      /** Format: date-time */
+      createdAt: string;
+    };
+    RigListDto: {
+      items: components['schemas']['RigDto'][];
+    };
+    CreateRigDto: {
+      name: string;
+      notes?: string;
+    };
+    /** @enum {string} */
+    JobState: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+    /** @enum {string} */
+    JobKind: 'analysis';
+    FailureDto: {
+      code: string;
+      message: string;
+      attempts: number;
+    };
+    JobDto: {
+      /** Format: uuid */
+      id: string;
+      kind: components['schemas']['JobKind'];
+      /** Format: uuid */
+      captureId: string;
+      captureNumber: number;
+      state: components['schemas']['JobState'];
+      progress: number;
+      attempts: number;
+      maxAttempts: number;
+      failure: components['schemas']['FailureDto'] | null;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: date-time */
+      startedAt: string | null;
+      /** Format: date-time */
+      endedAt: string | null;
+    };
+    JobListDto: {
+      items: components['schemas']['JobDto'][];
+    };
+    /** @enum {string} */
+    MeasureId:
+      | 'tone'
+      | 'idle'
+      | 'dynamic-range'
+      | 'two-tone'
+      | 'two-tone-steps'
+      | 'level-steps'
+      | 'sweep'
+      | 'multitone'
+      | 'separation'
+      | 'jitter'
+      | 'intersample'
+      | 'filter'
+      | 'loudness'
+      | 'programme';
+    /** @enum {string} */
+    CaptureState: 'queued' | 'analysing' | 'done' | 'failed' | 'cancelled';
+    /** @enum {string} */
+    CaptureSort: 'number' | 'uploadedAt' | 'fileName' | 'sizeBytes' | 'durationS' | 'unit' | 'measure';
+    /** @enum {string} */
+    SortOrder: 'asc' | 'desc';
+    UploaderDto: {
+      /** Format: uuid */
+      id: string;
+      displayName: string;
+    };
+    CaptureUnitDto: {
+      /** Format: uuid */
+      id: string;
+      maker: string;
+      model: string;
+      serialNumber: string | null;
+    };
+    NamedDto: {
+      /** Format: uuid */
+      id: string;
+      name: string;
+    };
+    /** @enum {string} */
+    SampleFormat: 'integer' | 'float';
+    FileWarningDto: {
+      code: string;
+      message: string;
+    };
+    CaptureLinkDto: {
+      /** Format: uuid */
+      id: string;
+      number: number;
+    };
+    /** @enum {string} */
+    Evidence: 'sound' | 'damaged' | 'missing';
+    MainFigureDto: {
+      /** @example thdPlusNoiseDb */
+      key: string;
+      value: number;
+      /** @example dB */
+      unit: string;
+      /** @example left */
+      channel: string;
+      /** @description What limits the figure, where something does */
+      limitBy: string | null;
+      marginDb: number | null;
+    };
+    RecordSummaryDto: {
+      /** Format: uuid */
+      id: string;
+      /** @description 1, 2, 3 … in the capture */
+      ordinal: number;
+      measure: components['schemas']['MeasureId'];
+      dspVersion: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: uuid */
+      supersededById: string | null;
+      /** Format: uuid */
+      supersedesId: string | null;
+      mainFigure: components['schemas']['MainFigureDto'] | null;
+      warningCount: number;
+      /** @description For a small drawing: 64 values from 0 to 1 a channel */
+      sketch: number[][];
+      /** @description What the recording was taken for, and why */
+      recognisedAs: string | null;
+      stimulusName: string | null;
+      fundamentalFrequencyHz: number | null;
+      fundamentalLevelDbfs: number | null;
+    };
+    CaptureDto: {
+      /** Format: uuid */
+      id: string;
+      number: number;
+      fileName: string;
+      sizeBytes: number;
+      sha256: string;
+      /** Format: date-time */
+      uploadedAt: string;
+      uploadedBy: components['schemas']['UploaderDto'];
+      note: string;
+      unit: components['schemas']['CaptureUnitDto'] | null;
+      condition: components['schemas']['NamedDto'] | null;
+      rig: components['schemas']['NamedDto'] | null;
+      sampleRateHz: number;
+      channelCount: number;
+      bitsPerSample: number;
+      sampleFormat: components['schemas']['SampleFormat'];
+      frameCount: number;
+      durationS: number;
+      fileWarnings: components['schemas']['FileWarningDto'][];
+      /** @description Other captures of the very same bytes */
+      sameBytesAs: components['schemas']['CaptureLinkDto'][];
+      evidence: components['schemas']['Evidence'];
+      /** Format: date-time */
+      checkedAt: string | null;
+      state: components['schemas']['CaptureState'];
+      progress: number | null;
+      failure: components['schemas']['FailureDto'] | null;
+      /**
+       * Format: uuid
+       * @description The latest analysis that was asked for
+       */
+      jobId: string | null;
+      record: components['schemas']['RecordSummaryDto'] | null;
+    };
+    CaptureListDto: {
+      items: components['schemas']['CaptureDto'][];
+      nextCursor: string | null;
+      /** @description Captures that the filter lets through */
+      total: number;
+      /** @description All captures */
+      totalAll: number;
+      /** @description Bytes of all captures */
+      totalBytes: number;
+    };
+    UploadCaptureDto: {
+      /** Format: uuid */
+      unitId?: string;
+      /** Format: uuid */
+      conditionId?: string;
+      /** Format: uuid */
+      rigId?: string;
+      note?: string;
+      /**
+       * Format: binary
+       * @description The WAV file; the last field of the form
+       */
+      file: string;
+    };
+    FileCaptureDto: {
+      /** Format: uuid */
+      unitId?: string | null;
+      /** Format: uuid */
+      conditionId?: string | null;
+      /** Format: uuid */
+      rigId?: string | null;
+      note?: string;
+    };
+    OverviewChannelDto: {
+      min: number[];
+      max: number[];
+    };
+    OverviewDto: {
+      framesPerBin: number;
+      channels: components['schemas']['OverviewChannelDto'][];
+    };
+    RecordListDto: {
+      items: components['schemas']['RecordSummaryDto'][];
+    };
+    RequestRecordDto: {
+      /** @description Left out: recognised */
+      measure?: components['schemas']['MeasureId'];
+      fromS?: number;
+      toS?: number;
+      bandLowHz?: number;
+      bandHighHz?: number;
+      highestHarmonic?: number;
+    };
+    RequestedRecordDto: {
+      /** Format: uuid */
+      jobId: string;
+      /** @description False: the same analysis was asked for before */
+      isNew: boolean;
+    };
+    RecordDto: {
+      /** Format: uuid */
+      id: string;
+      /** @description 1, 2, 3 … in the capture */
+      ordinal: number;
+      measure: components['schemas']['MeasureId'];
+      dspVersion: string;
+      /** Format: date-time */
+      createdAt: string;
+      /** Format: uuid */
+      supersededById: string | null;
+      /** Format: uuid */
+      supersedesId: string | null;
+      mainFigure: components['schemas']['MainFigureDto'] | null;
+      warningCount: number;
+      /** @description For a small drawing: 64 values from 0 to 1 a channel */
+      sketch: number[][];
+      /** @description What the recording was taken for, and why */
+      recognisedAs: string | null;
+      stimulusName: string | null;
+      fundamentalFrequencyHz: number | null;
+      fundamentalLevelDbfs: number | null;
+      /** Format: uuid */
+      captureId: string;
+      /** @description False once a newer record superseded it */
+      isCurrent: boolean;
+      /** @description The record; each of its traces is { href, points, xUnit, yUnit } */
+      record: {
+        [key: string]: unknown;
+      };
+    };
+    /** @enum {string} */
+    DownloadFormat: 'json' | 'csv';
+    DifferenceDto: {
+      /** @example channels.0.figures.thdDb */
+      path: string;
+      /** @description Number, text or null */
+      stored: string | null;
+      /** @description Number, text or null */
+      computed: string | null;
+    };
+    VerificationDto: {
+      isEqual: boolean;
+      differing: components['schemas']['DifferenceDto'][];
+      evidence: components['schemas']['Evidence'];
+      /** @description The version that computed the figures again */
+      dspVersion: string;
+    };
+    CountedCapturesDto: {
+      count: number;
+      /** @description The latest five */
+      captures: components['schemas']['CaptureDto'][];
+    };
+    CapturesDto: {
+      items: components['schemas']['CaptureDto'][];
+    };
+    LogLineDto: {
+      /** Format: date-time */
+      at: string;
+      text: string;
+      /** Format: uuid */
+      captureId?: string;
+      /** @description Null: the program itself */
+      actorName: string | null;
+    };
+    TodayDto: {
+      unsorted: components['schemas']['CountedCapturesDto'];
+      failed: components['schemas']['CountedCapturesDto'];
+      underWay: components['schemas']['CapturesDto'];
+      recent: components['schemas']['CapturesDto'];
+      damaged: components['schemas']['CountedCapturesDto'];
+      log: components['schemas']['LogLineDto'][];
+    };
+  };
+  responses: never;
+  parameters: never;
+  requestBodies: never;
+  headers: never;
+  pathItems: never;
 }
 export type $defs = Record<string, never>;
 export interface operations {
-    "get/session": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SessionDto"];
-                };
-            };
-        };
+  getLive: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/session": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["SignInDto"];
-            };
+        content: {
+          'application/json': components['schemas']['LiveDto'];
         };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SessionDto"];
-                };
-            };
-        };
+      };
     };
-    "delete/session": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  getReady: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/setup": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["SetupDto"];
-            };
+        content: {
+          'application/json': components['schemas']['ReadyDto'];
         };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SessionDto"];
-                };
-            };
+      };
+      503: {
+        headers: {
+          [name: string]: unknown;
         };
+        content: {
+          'application/json': components['schemas']['ReadyDto'];
+        };
+      };
     };
-    "post/password-resets": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["AskPasswordResetDto"];
-            };
-        };
-        responses: {
-            202: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  listAuditEntries: {
+    parameters: {
+      query?: {
+        q?: string;
+        limit?: number;
+        cursor?: string;
+      };
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/password-resets/complete": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CompletePasswordResetDto"];
-            };
+        content: {
+          'application/json': components['schemas']['AuditPageDto'];
         };
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+      };
     };
-    "post/invitations/look": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["InvitationTokenDto"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["InvitationLookDto"];
-                };
-            };
-        };
+  };
+  listMail: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/invitations/accept": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["AcceptInvitationDto"];
-            };
+        content: {
+          'application/json': components['schemas']['MailListDto'];
         };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SessionDto"];
-                };
-            };
+      };
+      /** @description Mails are really sent here, none are kept */
+      404: {
+        headers: {
+          [name: string]: unknown;
         };
+        content?: never;
+      };
     };
-    "get/me": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["PersonDto"];
-                };
-            };
-        };
+  };
+  listPeople: {
+    parameters: {
+      query?: {
+        q?: string;
+      };
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "patch/me": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["UpdateMeDto"];
-            };
+        content: {
+          'application/json': components['schemas']['PeopleListDto'];
         };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["PersonDto"];
-                };
-            };
-        };
+      };
     };
-    "post/me/password": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["ChangePasswordDto"];
-            };
-        };
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  updatePerson: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
     };
-    "get/me/sessions": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SessionRowDto"][];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['UpdatePersonDto'];
+      };
     };
-    "delete/me/sessions/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
+        content: {
+          'application/json': components['schemas']['PersonDto'];
         };
+      };
     };
-    "get/me/tokens": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ApiTokenDto"][];
-                };
-            };
-        };
+  };
+  sendPasswordReset: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
     };
-    "post/me/tokens": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      202: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CreateApiTokenDto"];
-            };
-        };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["CreatedApiTokenDto"];
-                };
-            };
-        };
+        content?: never;
+      };
     };
-    "delete/me/tokens/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  askPasswordReset: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/people": {
-        parameters: {
-            query?: {
-                q?: string;
-            };
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["PeopleDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['AskPasswordResetDto'];
+      };
     };
-    "patch/people/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    responses: {
+      202: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["UpdatePersonDto"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["PersonDto"];
-                };
-            };
-        };
+        content?: never;
+      };
     };
-    "post/people/{id}/password-reset": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            202: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  completePasswordReset: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/invitations": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["InvitationsDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CompletePasswordResetDto'];
+      };
     };
-    "post/invitations": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CreateInvitationDto"];
-            };
-        };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["InvitationDto"];
-                };
-            };
-        };
+        content?: never;
+      };
     };
-    "delete/invitations/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  setUp: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/audit": {
-        parameters: {
-            query?: {
-                cursor?: string;
-                limit?: number;
-                q?: string;
-            };
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["AuditPageDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['SetupDto'];
+      };
     };
-    "get/mail": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["SentMailsDto"];
-                };
-            };
+        content: {
+          'application/json': components['schemas']['SessionDto'];
         };
+      };
+      /** @description This bench has been set up */
+      404: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
     };
-    "get/units": {
-        parameters: {
-            query?: {
-                q?: string;
-                limit?: number;
-                cursor?: string;
-            };
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["UnitPageDto"];
-                };
-            };
-        };
+  };
+  getSession: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/units": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CreateUnitDto"];
-            };
+        content: {
+          'application/json': components['schemas']['SessionDto'];
         };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["UnitDto"];
-                };
-            };
-        };
+      };
     };
-    "get/units/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["UnitDto"];
-                };
-            };
-        };
+  };
+  signIn: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "patch/units/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["UpdateUnitDto"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["UnitDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['SignInDto'];
+      };
     };
-    "post/units/{id}/conditions": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CreateConditionDto"];
-            };
+        content: {
+          'application/json': components['schemas']['SessionDto'];
         };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ConditionDto"];
-                };
-            };
-        };
+      };
     };
-    "patch/conditions/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["UpdateConditionDto"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["ConditionDto"];
-                };
-            };
-        };
+  };
+  signOut: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/rigs": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["RigsDto"];
-                };
-            };
-        };
+        content?: never;
+      };
     };
-    "post/rigs": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["CreateRigDto"];
-            };
-        };
-        responses: {
-            201: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["RigDto"];
-                };
-            };
-        };
+  };
+  getMe: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/captures": {
-        parameters: {
-            query?: {
-                q?: string;
-                unitId?: string;
-                unsorted?: boolean;
-                conditionId?: string;
-                rigId?: string;
-                measure?: string;
-                state?: string;
-                hasWarnings?: boolean;
-                since?: string;
-                until?: string;
-                sort?: string;
-                order?: "asc" | "desc";
-                limit?: number;
-                cursor?: string;
-            };
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["CapturePageDto"];
-                };
-            };
+        content: {
+          'application/json': components['schemas']['PersonDto'];
         };
+      };
     };
-    "get/captures/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["CaptureDto"];
-                };
-            };
-        };
+  };
+  updateMe: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "patch/captures/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["UpdateCaptureDto"];
-            };
-        };
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["CaptureDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['UpdateMeDto'];
+      };
     };
-    "get/captures/{id}/overview": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["OverviewDto"];
-                };
-            };
+        content: {
+          'application/json': components['schemas']['PersonDto'];
         };
+      };
     };
-    "get/captures/{id}/records": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["RecordListDto"];
-                };
-            };
-        };
+  };
+  changePassword: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "post/captures/{id}/records": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody: {
-            content: {
-                "application/json": components["schemas"]["AnalyseDto"];
-            };
-        };
-        responses: {
-            202: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["QueuedAnalysisDto"];
-                };
-            };
-        };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['ChangePasswordDto'];
+      };
     };
-    "get/records/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["RecordDetailDto"];
-                };
-            };
-        };
+        content?: never;
+      };
     };
-    "post/records/{id}/verify": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["VerificationDto"];
-                };
-            };
-        };
+  };
+  listSessions: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
-    "get/jobs": {
-        parameters: {
-            query?: {
-                state?: string;
-            };
-            header?: never;
-            path?: never;
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["JobsDto"];
-                };
-            };
+        content: {
+          'application/json': components['schemas']['OwnSessionDto'][];
         };
+      };
     };
-    "post/jobs/{id}/retry": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            202: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+  };
+  endSession: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
     };
-    "delete/jobs/{id}": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path: {
-                id: string;
-            };
-            cookie?: never;
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
         };
-        requestBody?: never;
-        responses: {
-            204: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content?: never;
-            };
-        };
+        content?: never;
+      };
     };
-    "get/today": {
-        parameters: {
-            query?: never;
-            header?: never;
-            path?: never;
-            cookie?: never;
-        };
-        requestBody?: never;
-        responses: {
-            200: {
-                headers: {
-                    [name: string]: unknown;
-                };
-                content: {
-                    "application/json": components["schemas"]["TodayDto"];
-                };
-            };
-        };
+  };
+  listTokens: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
     };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['ApiTokenDto'][];
+        };
+      };
+    };
+  };
+  createToken: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateApiTokenDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['MadeApiTokenDto'];
+        };
+      };
+    };
+  };
+  removeToken: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  listInvitations: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['InvitationListDto'];
+        };
+      };
+    };
+  };
+  createInvitation: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateInvitationDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['MadeInvitationDto'];
+        };
+      };
+    };
+  };
+  revokeInvitation: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  lookAtInvitation: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['LookAtInvitationDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['InvitationLookDto'];
+        };
+      };
+    };
+  };
+  acceptInvitation: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['AcceptInvitationDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['SessionDto'];
+        };
+      };
+    };
+  };
+  listUnits: {
+    parameters: {
+      query?: {
+        q?: string;
+        limit?: number;
+        cursor?: string;
+      };
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['UnitListDto'];
+        };
+      };
+    };
+  };
+  createUnit: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateUnitDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['UnitDto'];
+        };
+      };
+    };
+  };
+  getUnit: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['UnitDetailDto'];
+        };
+      };
+    };
+  };
+  updateUnit: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['UpdateUnitDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['UnitDetailDto'];
+        };
+      };
+    };
+  };
+  createCondition: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateConditionDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['ConditionDto'];
+        };
+      };
+    };
+  };
+  updateCondition: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['UpdateConditionDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['ConditionDto'];
+        };
+      };
+    };
+  };
+  listRigs: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RigListDto'];
+        };
+      };
+    };
+  };
+  createRig: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateRigDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RigDto'];
+        };
+      };
+    };
+  };
+  listJobs: {
+    parameters: {
+      query?: {
+        state?: components['schemas']['JobState'];
+        limit?: number;
+      };
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['JobListDto'];
+        };
+      };
+    };
+  };
+  retryJob: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      202: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  cancelJob: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  listCaptures: {
+    parameters: {
+      query?: {
+        q?: string;
+        unitId?: string;
+        /** @description Only captures that belong to no unit yet */
+        unsorted?: boolean;
+        conditionId?: string;
+        rigId?: string;
+        measure?: components['schemas']['MeasureId'];
+        state?: components['schemas']['CaptureState'];
+        /** @description Only captures whose file or current record carries a warning */
+        hasWarnings?: boolean;
+        /** @description Uploaded at or after */
+        since?: string;
+        /** @description Uploaded before */
+        until?: string;
+        sort?: components['schemas']['CaptureSort'];
+        order?: components['schemas']['SortOrder'];
+        limit?: number;
+        cursor?: string;
+      };
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CaptureListDto'];
+        };
+      };
+    };
+  };
+  uploadCapture: {
+    parameters: {
+      query?: never;
+      header: {
+        'idempotency-key': string;
+        /** @description Sending the same upload again makes no second capture */
+        'Idempotency-Key'?: string;
+      };
+      path?: never;
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'multipart/form-data': components['schemas']['UploadCaptureDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CaptureDto'];
+        };
+      };
+    };
+  };
+  getCapture: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CaptureDto'];
+        };
+      };
+    };
+  };
+  updateCapture: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['FileCaptureDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CaptureDto'];
+        };
+      };
+    };
+  };
+  downloadCapture: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'audio/wav': string;
+        };
+      };
+    };
+  };
+  getOverview: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['OverviewDto'];
+        };
+      };
+    };
+  };
+  listRecords: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RecordListDto'];
+        };
+      };
+    };
+  };
+  requestRecord: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['RequestRecordDto'];
+      };
+    };
+    responses: {
+      202: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RequestedRecordDto'];
+        };
+      };
+    };
+  };
+  getRecord: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RecordDto'];
+        };
+      };
+    };
+  };
+  downloadTrace: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        sha256: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      /** @description Little-endian Float64: all x, then all y */
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/octet-stream': string;
+        };
+      };
+    };
+  };
+  downloadRecord: {
+    parameters: {
+      query?: {
+        format?: components['schemas']['DownloadFormat'];
+      };
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': string;
+          'text/csv': string;
+        };
+      };
+    };
+  };
+  verifyRecord: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['VerificationDto'];
+        };
+      };
+    };
+  };
+  streamEvents: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'text/event-stream': string;
+        };
+      };
+    };
+  };
+  streamCaptureEvents: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'text/event-stream': string;
+        };
+      };
+    };
+  };
+  getToday: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['TodayDto'];
+        };
+      };
+    };
+  };
 }

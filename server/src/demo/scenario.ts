@@ -1,0 +1,163 @@
+import type { PracticeDevice } from '@benchlark/dsp';
+import type { CreateConditionDto, CreateUnitDto } from '../units/dto/write-unit.dto';
+
+/**
+ * The demo bench's books. Everybody and everything here is invented; every figure comes from passing stimuli through
+ * these practice devices and analysing what comes out.
+ */
+export interface DemoTake {
+  readonly fileName: string;
+  readonly stimulus: 'sine' | 'low-level-tone' | 'silence';
+  readonly device: PracticeDevice;
+  readonly sampleRateHz: number;
+  readonly bits: 16 | 24;
+  readonly rig: string;
+  readonly note: string;
+  /** A recorder that lost its supply leaves the size field of the data unwritten. */
+  readonly isCutOff?: boolean;
+}
+
+export interface DemoCondition {
+  readonly condition: CreateConditionDto;
+  readonly takes: readonly DemoTake[];
+}
+
+export interface DemoUnit {
+  readonly unit: CreateUnitDto;
+  readonly conditions: readonly DemoCondition[];
+}
+
+export const DEMO_RIGS = [
+  { name: 'Window bench', notes: 'Interface in the rack, balanced both ways, 33 ohm load box.' },
+  { name: 'Field recorder', notes: 'Battery recorder for units that cannot leave their owner.' },
+] as const;
+
+type Stage = PracticeDevice['stages'][number];
+
+/** The rig's own converter and noise come last in every chain. */
+function device(name: string, seed: number, stages: readonly Stage[], rigNoiseDbfs = -113): PracticeDevice {
+  const rig: Stage[] = [
+    { kind: 'gain', channel: 'both', gainDb: -1.2 },
+    { kind: 'noise', channel: 'both', levelDbfs: rigNoiseDbfs },
+    { kind: 'lead', channel: 'both', seconds: 0.6 },
+  ];
+  return { schema: 'benchlark-device/1', name, sampleRateHz: null, seed, stages: [...stages, ...rig] };
+}
+
+const slightCurve: Stage = { kind: 'polynomial', channel: 'both', coefficients: [1, 1.6e-5, 9e-6] };
+/** 50 Hz and its multiples, strongest where rectifiers put them. */
+const humRight: Stage = {
+  kind: 'hum',
+  channel: 'right',
+  frequencyHz: 50.02,
+  levelsDbfs: [-82.4, -76.1, -95.3, -84.8, -103.2, -92.7],
+};
+const humRest: Stage = { kind: 'hum', channel: 'both', frequencyHz: 50.02, levelsDbfs: [-118.5, -121.3] };
+
+const corrieAsReceived = device('headphone amplifier, as received', 11, [slightCurve, humRight, humRest]);
+const corrieOtherSupply = device('headphone amplifier, other supply', 12, [slightCurve, humRest]);
+const candle = device(
+  'converter',
+  13,
+  [
+    { kind: 'polynomial', channel: 'both', coefficients: [1, 0, 4e-6] },
+    { kind: 'clock', channel: 'both', ppm: 17.5 },
+  ],
+  -117,
+);
+const strand = device('streamer', 14, [
+  { kind: 'tone', channel: 'both', frequencyHz: 1000, levelDbfs: -101.5 },
+  { kind: 'tone', channel: 'both', frequencyHz: 2000, levelDbfs: -108 },
+  { kind: 'tone', channel: 'both', frequencyHz: 8000, levelDbfs: -104.2 },
+  { kind: 'clock', channel: 'both', ppm: -42 },
+]);
+
+function threeTakes(
+  stem: string,
+  chain: PracticeDevice,
+  note: string,
+  sampleRateHz = 96_000,
+): readonly DemoTake[] {
+  const common = { device: chain, sampleRateHz, bits: 24, rig: 'Window bench', note } as const;
+  return [
+    { ...common, stimulus: 'sine', fileName: `${stem}-tone.wav` },
+    { ...common, stimulus: 'silence', fileName: `${stem}-idle.wav` },
+    { ...common, stimulus: 'low-level-tone', fileName: `${stem}-low.wav` },
+  ];
+}
+
+export const DEMO_UNITS: readonly DemoUnit[] = [
+  {
+    unit: {
+      maker: 'Fennwright',
+      model: 'Corrie H2',
+      serialNumber: '0093',
+      kind: 'headphone-amplifier',
+      notes: 'On loan from a reader who hears a low hum in the right ear between tracks.',
+    },
+    conditions: [
+      {
+        condition: { name: 'as received', notes: 'With its own plug-in supply.' },
+        takes: threeTakes(
+          'corrie-0093-received',
+          corrieAsReceived,
+          'Hum in the right ear, louder with the lamp on.',
+        ),
+      },
+      {
+        condition: { name: 'on linear supply', notes: 'The same unit on the bench supply; nothing opened.' },
+        takes: threeTakes('corrie-0093-linear', corrieOtherSupply, 'Hum gone to the ear.'),
+      },
+    ],
+  },
+  {
+    unit: {
+      maker: 'Ostler and Daughters',
+      model: 'Candle 4',
+      serialNumber: '220417',
+      kind: 'converter',
+      notes: 'Bought over the counter.',
+    },
+    conditions: [
+      {
+        condition: { name: 'as bought', notes: '' },
+        takes: threeTakes('candle-220417', candle, ''),
+      },
+    ],
+  },
+  {
+    unit: { maker: 'Pallas Row', model: 'Strand S', serialNumber: 'PR-5518', kind: 'streamer', notes: '' },
+    conditions: [
+      {
+        condition: { name: 'firmware 2.1', notes: 'Fed over USB.' },
+        takes: threeTakes('strand-5518-usb', strand, 'A faint whistle with the volume up.', 48_000).slice(
+          0,
+          2,
+        ),
+      },
+    ],
+  },
+];
+
+/** What the recorder brought home and nobody has named yet. */
+export const DEMO_UNSORTED: readonly DemoTake[] = [
+  {
+    fileName: 'ZOE_0014.wav',
+    stimulus: 'sine',
+    device: corrieOtherSupply,
+    sampleRateHz: 44_100,
+    bits: 16,
+    rig: 'Field recorder',
+    note: '',
+  },
+  {
+    fileName: 'ZOE_0015.wav',
+    stimulus: 'silence',
+    device: strand,
+    sampleRateHz: 48_000,
+    bits: 24,
+    rig: 'Field recorder',
+    note: 'The battery gave out.',
+    isCutOff: true,
+  },
+];
