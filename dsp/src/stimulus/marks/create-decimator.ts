@@ -32,11 +32,17 @@ export function createDecimator(sampleRateHz: number): Decimator {
     const output = new Float64Array(count);
     for (let i = 0; i < count; i++) {
       const from = i * factor;
+      const to = from + kernel.length - 1;
       let sum = kernel[half] * input[from + half];
-      for (let k = 0, m = kernel.length - 1; k < half; k++, m--) {
-        sum += kernel[k] * (input[from + k] + input[from + m]);
+      let other = 0;
+      let k = 0;
+      // Two sums, so that neither addition waits for the other's.
+      for (; k + 1 < half; k += 2) {
+        sum += kernel[k] * (input[from + k] + input[to - k]);
+        other += kernel[k + 1] * (input[from + k + 1] + input[to - k - 1]);
       }
-      output[i] = sum;
+      if (k < half) sum += kernel[k] * (input[from + k] + input[to - k]);
+      output[i] = sum + other;
     }
     held = input.slice(count * factor);
     return output;
