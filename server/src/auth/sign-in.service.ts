@@ -23,8 +23,10 @@ export class SignInService {
   /** @throws AppError WRONG_CREDENTIALS; TOO_MANY_REQUESTS after too many of those */
   async check(actor: Actor, { email, password }: SignInDto): Promise<Person> {
     const [account, address] = [accountKey('sign-in', email), addressKey('sign-in', actor.ip)];
-    await this.attempts.begin(address);
+    // The account is counted first: what its limit refuses is not held against everybody else behind the address.
+    await this.attempts.assertFree(address);
     await this.attempts.begin(account);
+    await this.attempts.begin(address);
     const person = await this.people.findByEmail(email);
     const isRight = person
       ? await this.hasher.verify(person.passwordHash, password)
