@@ -3,6 +3,7 @@ import type { AddressInfo } from 'node:net';
 import { resolve } from 'node:path';
 import { ROLES } from '../src/common/roles';
 import { createBench, type Bench } from './support/bench';
+import { signedIn } from './support/browser';
 
 const TABLE_FILE = resolve(__dirname, 'role-table.json');
 const CALLERS = ['anonymous', ...ROLES] as const;
@@ -10,6 +11,7 @@ type Caller = (typeof CALLERS)[number];
 /** Expected status by caller; ids in the paths name nothing, bodies are empty. */
 type Row = Record<Caller, number>;
 
+const SIGN_OUT = 'DELETE /api/session';
 const ID_OF_NOTHING = '00000000-0000-4000-8000-000000000000';
 
 interface Layer {
@@ -19,15 +21,18 @@ interface Layer {
 /** Every route the application answers, as `GET /api/units/:id`; taken from the router itself, so that none is missed. */
 function routesOf(bench: Bench): string[] {
   const express = bench.app.getHttpAdapter().getInstance() as { router: { stack: Layer[] } };
-  return express.router.stack
-    .flatMap(({ route }) =>
-      route ? Object.keys(route.methods).map((method) => `${method.toUpperCase()} ${route.path}`) : [],
-    )
-    .filter((route) => route.includes(' /api/') && !route.includes('*')) // the logger's middleware stands on a wildcard
-    .sort();
+  return (
+    express.router.stack
+      .flatMap(({ route }) =>
+        route ? Object.keys(route.methods).map((method) => `${method.toUpperCase()} ${route.path}`) : [],
+      )
+      .filter((route) => route.includes(' /api/') && !route.includes('*')) // the logger's middleware stands on a wildcard
+      // Signing out comes last: the sessions are needed until then.
+      .sort((a, b) => Number(a === SIGN_OUT) - Number(b === SIGN_OUT) || (a < b ? -1 : 1))
+  );
 }
 
-async function statusOf(bench: Bench, route: string, caller: Caller): Promise<number> {
+async function statusOf(bench: Bench, route: string, session: Record<string, string>): Promise<number> {
   const [method = '', path = ''] = route.split(' ');
   const filled = path.replace(':sha256', 'f'.repeat(64)).replace(/:\w+/g, ID_OF_NOTHING);
   const { port } = bench.server.address() as AddressInfo;
@@ -38,13 +43,26 @@ async function statusOf(bench: Bench, route: string, caller: Caller): Promise<nu
     method,
     signal: ending.signal,
     headers: {
-      ...(caller === 'anonymous' ? {} : bench.as(caller)),
+      ...session,
       ...(hasBody ? { 'Content-Type': 'application/json' } : {}),
     },
     ...(hasBody ? { body: '{}' } : {}),
   });
   ending.abort();
   return answer.status;
+}
+
+/** Headers of a browser in which a person with the role has signed in. */
+async function sessionOf(bench: Bench, caller: Caller): Promise<Record<string, string>> {
+  if (caller === 'anonymous') return {};
+  const { browser } = await signedIn(bench, caller);
+  const cookies = browser.agent.jar.getCookies({
+    domain: '127.0.0.1',
+    path: '/',
+    secure: false,
+    script: false,
+  });
+  return { Cookie: cookies.toValueString(), 'x-csrf-token': browser.csrfToken };
 }
 
 describe('who may call what', () => {
@@ -56,9 +74,11 @@ describe('who may call what', () => {
 
   it('is for every route and every role what the table says', async () => {
     const found: Record<string, Row> = {};
+    const sessions = {} as Record<Caller, Record<string, string>>;
+    for (const caller of CALLERS) sessions[caller] = await sessionOf(bench, caller);
     for (const route of routesOf(bench)) {
       const row = {} as Row;
-      for (const caller of CALLERS) row[caller] = await statusOf(bench, route, caller);
+      for (const caller of CALLERS) row[caller] = await statusOf(bench, route, sessions[caller]);
       found[route] = row;
     }
     // For whoever adds a route: writes the table as it is now, to be read line by line before it is committed.
