@@ -87,6 +87,10 @@ describe('the tones', () => {
 });
 
 describe('the file around the body', () => {
+  it('is left out of a bare file: 10 s and no frame more', () => {
+    expect(createStimulus('sine', { ...PLAIN, isBare: true }).source.frameCount).toBe(480_000);
+  });
+
   it('begins with 2 s of 997 Hz at -40 dBFS', async () => {
     const { channels } = await render('sine', PLAIN);
     const fit = fitSine(channels[0].slice(2000, 94_000), 48_000, 997);

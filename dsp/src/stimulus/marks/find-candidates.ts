@@ -1,7 +1,4 @@
-import { createRealFft } from '../../spectrum/create-real-fft.js';
-import { MARK_DURATION_S, MARK_LOW_HZ, markAt, quadratureMarkAt } from '../mark-chirp.js';
-import { designHighPass } from './band-kernels.js';
-import { invertRealFft } from './inverse-transform.js';
+import { createMarkCorrelator, FFT_LENGTH } from './create-mark-correlator.js';
 
 /** A place where the signal looks like a mark. */
 export interface MarkCandidate {
@@ -20,7 +17,6 @@ export interface CandidateFinder {
   finish(): MarkCandidate[];
 }
 
-const FFT_LENGTH = 16_384;
 /**
  * Noise of the marks' band reaches it once in e^(0.16 · 240) tries: 240 is a mark's product of duration and bandwidth.
  * A mark reaches it down to 7 dB of noise in its band above itself.
@@ -29,106 +25,65 @@ const LEAST_LIKENESS = 0.4;
 /** Maxima closer than this belong to one mark. */
 const APART_S = 0.03;
 const MOST_CANDIDATES = 400;
-/** Hum and the lead-in lie below, and may be stronger than the marks. */
-const HIGH_PASS_FROM_HZ = 1000;
 /** Energy, against the block's, below which only the transform's rounding is left. */
 const ROUNDING = 1e-13;
 
-interface Kernels {
-  readonly markLength: number;
-  readonly half: number;
-  readonly energy: number;
-  readonly highPass: Float64Array;
-  readonly inPhase: readonly [Float64Array, Float64Array];
-  readonly quadrature: readonly [Float64Array, Float64Array];
+function keepLikeliest(candidates: readonly MarkCandidate[]): MarkCandidate[] {
+  const byLikeness = [...candidates].sort((one, other) => other.likeness - one.likeness);
+  return byLikeness.slice(0, MOST_CANDIDATES).sort((one, other) => one.atS - other.atS);
 }
 
-function designKernels(sampleRateHz: number): Kernels {
-  const fft = createRealFft(FFT_LENGTH);
-  const transform = (samples: Float64Array): [Float64Array, Float64Array] => {
-    const re = new Float64Array(FFT_LENGTH / 2 + 1);
-    const im = new Float64Array(FFT_LENGTH / 2 + 1);
-    fft.transform(samples, re, im);
-    return [re, im];
-  };
-  const padded = (of: (n: number) => number, length: number): Float64Array =>
-    Float64Array.from({ length: FFT_LENGTH }, (_, n) => (n < length ? of(n) : 0));
-  const markLength = Math.ceil(MARK_DURATION_S * sampleRateHz);
-  const mark = padded((n) => markAt(n / sampleRateHz), markLength);
-  const kernel = designHighPass(HIGH_PASS_FROM_HZ, MARK_LOW_HZ, sampleRateHz);
-  const half = (kernel.length - 1) / 2;
-  const centred = new Float64Array(FFT_LENGTH);
-  kernel.forEach((tap, k) => (centred[(k - half + FFT_LENGTH) % FFT_LENGTH] = tap));
+/** Keeps the strongest of candidates that lie close together, and not more than can be looked at. */
+function createCollector() {
+  let found: MarkCandidate[] = [];
   return {
-    markLength,
-    half,
-    energy: mark.reduce((sum, x) => sum + x * x, 0),
-    highPass: transform(centred)[0],
-    inPhase: transform(mark),
-    quadrature: transform(padded((n) => quadratureMarkAt(n / sampleRateHz), markLength)),
+    add: (candidate: MarkCandidate): void => {
+      const last = found.at(-1);
+      if (last && candidate.atS - last.atS < APART_S) {
+        if (candidate.amplitude > last.amplitude) found[found.length - 1] = candidate;
+        return;
+      }
+      found.push(candidate);
+      if (found.length > 2 * MOST_CANDIDATES) found = keepLikeliest(found);
+    },
+    list: (): MarkCandidate[] => keepLikeliest(found),
   };
 }
 
-function correlate(
-  re: Float64Array,
-  im: Float64Array,
-  [markRe, markIm]: readonly [Float64Array, Float64Array],
-  productRe: Float64Array,
-  productIm: Float64Array,
-): void {
-  for (let k = 0; k < re.length; k++) {
-    productRe[k] = re[k] * markRe[k] + im[k] * markIm[k];
-    productIm[k] = im[k] * markRe[k] - re[k] * markIm[k];
-  }
+function sumOfSquares(samples: Float64Array, from: number, to: number): number {
+  let sum = 0;
+  for (let n = from; n < to; n++) sum += samples[n] * samples[n];
+  return sum;
 }
 
 /**
- * Makes a finder of marks: a matched filter by overlapping transforms, in phase and in quadrature, so that gain, polarity
- * and phase of the chain don't matter, held against the energy of what it looks at. Memory doesn't grow with the stream.
+ * Makes a finder of marks: a matched filter whose result is held against the energy of what it looks at. Memory doesn't
+ * grow with the stream.
  *
- * @see A. V. Oppenheim and R. W. Schafer, Discrete-Time Signal Processing, block convolution (section from memory)
+ * @param sampleRateHz - of the stream, lowered already
  */
 export function createCandidateFinder(sampleRateHz: number): CandidateFinder {
-  const kernels = designKernels(sampleRateHz);
-  const { markLength, half, energy } = kernels;
-  const fft = createRealFft(FFT_LENGTH);
-  const stepFrames = FFT_LENGTH - markLength - 2 * half;
-  const bins = FFT_LENGTH / 2 + 1;
-  const [re, im, productRe, productIm] = Array.from({ length: 4 }, () => new Float64Array(bins));
-  const [block, band, inPhase, quadrature] = Array.from({ length: 4 }, () => new Float64Array(FFT_LENGTH));
-  let filled = half; // zeros before the stream, so that its first sample can be judged
-  let blockFromFrame = -half;
-  let found: MarkCandidate[] = [];
+  const correlator = createMarkCorrelator(sampleRateHz);
+  const { markLength, edgeLength, energy } = correlator;
+  const stepFrames = FFT_LENGTH - markLength - 2 * edgeLength;
+  const leastSquared = LEAST_LIKENESS ** 2 * energy;
+  const block = new Float64Array(FFT_LENGTH);
+  const collector = createCollector();
+  let filled = edgeLength; // zeros before the stream, so that its first sample can be judged
+  let blockFromFrame = -edgeLength;
 
-  const note = (frame: number, envelope: number, likeness: number): void => {
-    const candidate = { atS: frame / sampleRateHz, amplitude: envelope / energy, likeness };
-    const last = found.at(-1);
-    if (last && candidate.atS - last.atS < APART_S) {
-      if (candidate.amplitude > last.amplitude) found[found.length - 1] = candidate;
-      return;
-    }
-    found.push(candidate);
-    if (found.length > 2 * MOST_CANDIDATES) found = keepLikeliest(found);
-  };
   const judge = (): void => {
-    fft.transform(block, re, im);
-    for (let k = 0; k < bins; k++) {
-      re[k] *= kernels.highPass[k];
-      im[k] *= kernels.highPass[k];
-    }
-    correlate(re, im, kernels.inPhase, productRe, productIm);
-    invertRealFft(fft, productRe, productIm, inPhase);
-    correlate(re, im, kernels.quadrature, productRe, productIm);
-    invertRealFft(fft, productRe, productIm, quadrature);
-    invertRealFft(fft, re, im, band);
-    let total = 0;
-    for (let n = half; n < FFT_LENGTH - half; n++) total += band[n] * band[n];
-    let local = 0;
-    for (let n = half; n < half + markLength; n++) local += band[n] * band[n];
-    for (let n = half; n < half + stepFrames; n++) {
-      const squared = inPhase[n] * inPhase[n] + quadrature[n] * quadrature[n];
-      if (local > ROUNDING * total && squared > LEAST_LIKENESS ** 2 * energy * local) {
-        note(blockFromFrame + n, Math.sqrt(squared), Math.min(1, Math.sqrt(squared / (energy * local))));
+    const { band, squaredEnvelope } = correlator.correlate(block);
+    const least = ROUNDING * sumOfSquares(band, edgeLength, FFT_LENGTH - edgeLength);
+    let local = sumOfSquares(band, edgeLength, edgeLength + markLength);
+    for (let n = edgeLength; n < edgeLength + stepFrames; n++) {
+      const squared = squaredEnvelope[n];
+      if (local > least && squared > leastSquared * local) {
+        collector.add({
+          atS: (blockFromFrame + n) / sampleRateHz,
+          amplitude: Math.sqrt(squared) / energy,
+          likeness: Math.min(1, Math.sqrt(squared / (energy * local))),
+        });
       }
       local += band[n + markLength] ** 2 - band[n] ** 2;
     }
@@ -139,24 +94,18 @@ export function createCandidateFinder(sampleRateHz: number): CandidateFinder {
       block.set(part, filled);
       filled += part.length;
       taken += part.length;
-      if (filled === FFT_LENGTH) {
-        judge();
-        block.copyWithin(0, stepFrames);
-        filled = FFT_LENGTH - stepFrames;
-        blockFromFrame += stepFrames;
-      }
+      if (filled < FFT_LENGTH) continue;
+      judge();
+      block.copyWithin(0, stepFrames);
+      filled = FFT_LENGTH - stepFrames;
+      blockFromFrame += stepFrames;
     }
   };
   return {
     push,
     finish: () => {
       push(new Float64Array(FFT_LENGTH - filled + stepFrames));
-      return keepLikeliest(found);
+      return collector.list();
     },
   };
-}
-
-function keepLikeliest(candidates: readonly MarkCandidate[]): MarkCandidate[] {
-  const byLikeness = [...candidates].sort((one, other) => other.likeness - one.likeness);
-  return byLikeness.slice(0, MOST_CANDIDATES).sort((one, other) => one.atS - other.atS);
 }
