@@ -8,6 +8,7 @@ import {
   IsString,
   IsUUID,
   Length,
+  Matches,
   Max,
   MaxLength,
   Min,
@@ -18,13 +19,18 @@ import {
 const trimmed = () =>
   Transform(({ value }: { value: unknown }) => (typeof value === 'string' ? value.trim() : value));
 
-/** A text that must be there. */
+/** A line break in a name could begin a new header in a mail, or a new line in a log. */
+const oneLine = () =>
+  Matches(/^\P{Cc}*$/u, { message: '$property must be one line without control characters' });
+
+/** A text of one line that must be there. */
 export const NameField = (maxLength: number, options: { isOptional?: boolean } = {}) =>
   applyDecorators(
     (options.isOptional ? ApiPropertyOptional : ApiProperty)({ type: String, minLength: 1, maxLength }),
     ...(options.isOptional ? [IsOptional()] : []),
     trimmed(),
     IsString(),
+    oneLine(),
     Length(1, maxLength),
   );
 

@@ -8,6 +8,7 @@ import { ENV } from '../../config/env.module';
 import type { Env } from '../../config/env.schema';
 import { MailService } from '../../mail/mail.service';
 import { Person } from '../../people/person.entity';
+import { ApiTokensService } from '../api-tokens/api-tokens.service';
 import { createOpaqueToken, hashToken } from '../opaque-token';
 import { PasswordHasher } from '../passwords/password-hasher';
 import { assertGoodPassword } from '../passwords/password-rules';
@@ -25,6 +26,7 @@ export class PasswordResetsService {
     private readonly mail: MailService,
     private readonly hasher: PasswordHasher,
     private readonly sessions: SessionsService,
+    private readonly apiTokens: ApiTokensService,
     private readonly audit: AuditService,
   ) {}
 
@@ -100,6 +102,8 @@ export class PasswordResetsService {
       if (!affected) throw new AppError('TOKEN_SPENT');
       await tx.update(Person, { id: person.id }, { passwordHash });
       await this.sessions.endAll(person.id, tx);
+      // Whoever lost the password may have lost more: tokens made with it end too.
+      await this.apiTokens.removeAll(person.id, tx);
       await this.audit.record(
         actor,
         { action: 'password.reset', subject: `person:${person.id}`, person },
