@@ -10,7 +10,7 @@ export const LEAD_IN_LEVEL_DBFS = -40;
 const BEFORE_MARKS_S = 0.1;
 /** Between marks and body, and after the last mark: lets a chain's ringing and a recorder's latency pass. */
 export const BESIDE_BODY_S = 0.25;
-/** A raised-cosine rise or fall inside each end of a steady part; its spectrum is 100 dB down 1 kHz away. */
+/** A raised-cosine rise or fall inside each end of a steady part; its spectrum is 100 dB down 2 kHz away. */
 export const RAMP_S = 0.02;
 
 /** Where everything lies in a stimulus file, seconds from its first frame. */

@@ -1,4 +1,4 @@
-import { MARK_DURATION_S, markAt, quadratureMarkAt } from '../mark-chirp.js';
+import { MARK_DURATION_S, MARK_HIGH_HZ, MARK_LOW_HZ, markAt, quadratureMarkAt } from '../mark-chirp.js';
 
 /** A run of one channel at its full rate. */
 export interface ChannelRun {
@@ -25,8 +25,9 @@ const QUARTERS = 4;
 /** How far the quarters of a mark may differ; noise that happens to look like a mark as a whole differs by more. */
 const LEAST_COHERENCE = 0.85;
 const LEAST_QUARTER = 0.3;
-/** RMS angular frequency of a linear chirp from 2 to 6 kHz. */
-const RMS_RAD_PER_S = 2 * Math.PI * Math.sqrt((2000 ** 2 + 2000 * 6000 + 6000 ** 2) / 3);
+/** RMS angular frequency of a linear chirp. */
+const RMS_RAD_PER_S =
+  2 * Math.PI * Math.sqrt((MARK_LOW_HZ ** 2 + MARK_LOW_HZ * MARK_HIGH_HZ + MARK_HIGH_HZ ** 2) / 3);
 
 type Wave = (atS: number) => number;
 
