@@ -24,11 +24,13 @@ function codeOf(error: unknown): unknown {
 
 /** True when the database can't be reached or doesn't answer, as opposed to refusing a statement. */
 export function isDatabaseUnavailable(error: unknown): boolean {
-  if (!(error instanceof Error)) return false;
-  if (error instanceof AggregateError) return error.errors.some(isDatabaseUnavailable);
+  // By shape, not by class: Node's own network errors can come from another realm than ours.
+  if (typeof error !== 'object' || error === null) return false;
+  const { errors, message } = error as { errors?: unknown; message?: unknown };
+  if (Array.isArray(errors)) return errors.some(isDatabaseUnavailable);
   const code = codeOf(error);
   if (typeof code === 'string' && (UNAVAILABLE_CODES.has(code) || code.startsWith('08'))) return true;
-  return UNAVAILABLE_MESSAGES.test(error.message);
+  return typeof message === 'string' && UNAVAILABLE_MESSAGES.test(message);
 }
 
 /** True when a statement broke the named unique constraint. */

@@ -84,7 +84,7 @@ export class LocalMailServer implements OnApplicationShutdown {
       at: new Date(),
       to: recipients.join(', '),
       subject: parsed.subject ?? '',
-      text: parsed.text ?? '',
+      text: (parsed.text ?? '').trimEnd(),
       raw: raw.toString('utf8'),
     });
     this.#mails.length = Math.min(this.#mails.length, KEPT_MAX);
