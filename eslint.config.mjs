@@ -3,10 +3,27 @@ import globals from 'globals';
 import reactHooks from 'eslint-plugin-react-hooks';
 import tseslint from 'typescript-eslint';
 
-const noDefaultGlobals = ['process', 'Buffer', 'window', 'document', 'navigator', 'fetch', 'setTimeout', 'performance'];
+const noDefaultGlobals = [
+  'process',
+  'Buffer',
+  'window',
+  'document',
+  'navigator',
+  'fetch',
+  'setTimeout',
+  'performance',
+];
 
 export default tseslint.config(
-  { ignores: ['**/dist/**', '**/dist-types/**', '**/node_modules/**', '**/.run/**', 'app/src/lib/api-types.ts'] },
+  {
+    ignores: [
+      '**/dist/**',
+      '**/dist-types/**',
+      '**/node_modules/**',
+      '**/.run/**',
+      'app/src/lib/api-types.ts',
+    ],
+  },
   js.configs.recommended,
   {
     files: ['**/*.{ts,tsx}'],
@@ -16,7 +33,10 @@ export default tseslint.config(
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/no-non-null-assertion': 'error',
       '@typescript-eslint/consistent-type-imports': 'off',
-      '@typescript-eslint/restrict-template-expressions': ['error', { allowNumber: true, allowBoolean: true }],
+      '@typescript-eslint/restrict-template-expressions': [
+        'error',
+        { allowNumber: true, allowBoolean: true },
+      ],
       '@typescript-eslint/switch-exhaustiveness-check': 'error',
       '@typescript-eslint/no-misused-promises': ['error', { checksVoidReturn: { attributes: false } }],
       'no-empty': ['error', { allowEmptyCatch: false }],
@@ -31,13 +51,22 @@ export default tseslint.config(
       'no-restricted-imports': ['error', { patterns: ['node:*', '@benchlark/*'] }],
       'no-restricted-syntax': [
         'error',
-        { selector: "CallExpression[callee.object.name='Math'][callee.property.name='random']", message: 'Use a seeded generator.' },
+        {
+          selector: "CallExpression[callee.object.name='Math'][callee.property.name='random']",
+          message: 'Use a seeded generator.',
+        },
         { selector: "CallExpression[callee.object.name='Date']", message: 'dsp knows no clock.' },
       ],
     },
   },
   {
-    files: ['dsp/**/*.test.ts', 'server/**/*.spec.ts', 'server/test/**/*.ts', 'app/**/*.test.{ts,tsx}', 'app/e2e/**/*.ts'],
+    files: [
+      'dsp/**/*.test.ts',
+      'server/**/*.spec.ts',
+      'server/test/**/*.ts',
+      'app/**/*.test.{ts,tsx}',
+      'app/e2e/**/*.ts',
+    ],
     rules: {
       '@typescript-eslint/no-non-null-assertion': 'off',
       '@typescript-eslint/no-unsafe-assignment': 'off',

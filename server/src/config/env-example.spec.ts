@@ -13,7 +13,7 @@ function readExample(): Record<string, string> {
 
 describe('.env.example', () => {
   const example = readExample();
-  const usable = { ...example, SESSION_SECRET: 'f'.repeat(64) };
+  const usable: Record<string, string> = { ...example, SESSION_SECRET: 'f'.repeat(64) };
 
   it('can be used once its secret is replaced, and not before', () => {
     expect(parseEnv(usable)).toMatchObject({ NODE_ENV: 'production', STORAGE_KIND: 'folder', DEMO: false });
