@@ -69,6 +69,9 @@ describe('sessions', () => {
     const { browser, id } = await signedIn(testApp, 'technician');
     await testApp.dataSource.query(`UPDATE session SET ${shift} WHERE person_id = $1`, [id]);
     await browser.send('get', '/api/me').expect(401);
+    await signedIn(testApp, 'technician'); // whoever signs in next clears them away
+    const rows = await testApp.dataSource.query('SELECT 1 FROM session WHERE person_id = $1', [id]);
+    expect(rows).toHaveLength(0);
   });
 
   it('are listed and ended by their owner alone', async () => {

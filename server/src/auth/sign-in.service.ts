@@ -8,6 +8,7 @@ import { Person } from '../people/person.entity';
 import { accountKey, addressKey, AttemptsService } from './attempts/attempts.service';
 import type { SignInDto } from './dto/session.dto';
 import { PasswordHasher } from './passwords/password-hasher';
+import { SessionsService } from './sessions/sessions.service';
 
 /** Checks an e-mail address and a password. Unknown address, wrong password and shut account all look the same. */
 @Injectable()
@@ -16,6 +17,7 @@ export class SignInService {
     private readonly dataSource: DataSource,
     private readonly people: PeopleService,
     private readonly hasher: PasswordHasher,
+    private readonly sessions: SessionsService,
     private readonly attempts: AttemptsService,
     private readonly audit: AuditService,
   ) {}
@@ -42,6 +44,7 @@ export class SignInService {
     await this.attempts.takeBack(address);
     if (this.hasher.isOutdated(person.passwordHash)) await this.#renewHash(person.id, password);
     await this.audit.record(actor, { action: 'session.opened', person });
+    await this.sessions.removeExpired();
     return person;
   }
 

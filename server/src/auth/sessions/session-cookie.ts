@@ -18,8 +18,9 @@ const payloadSchema = z.object({ sid: z.string().min(40).max(60), exp: z.number(
 /**
  * Writes and reads the two cookies.
  *
- * Behind https both have the `__Host-` prefix and `Secure`. On plain http, which the configuration allows for the
- * loopback address only, browsers refuse that prefix (its rule asks for an https address), so the name goes without.
+ * Behind https both have the `__Host-` prefix and `Secure`. Plain http is allowed by the configuration for the loopback
+ * address only; Chromium would take `Secure` and the prefix there too (tried with version 150), but not every browser
+ * and no command-line client does, so both are left out.
  */
 @Injectable()
 export class SessionCookie {
