@@ -10,6 +10,8 @@ export interface ProblemFacts {
   /** What stood there. */
   readonly found?: string;
   readonly remedy?: string;
+  /** A more exact code than the error's own, such as the reader's. */
+  readonly reason?: string;
   readonly fields?: FieldErrors;
   readonly retryAfterS?: number;
 }
@@ -64,6 +66,7 @@ export function toApiError(status: number, body: unknown, headers?: Headers): Ap
     offset: typeof body['offset'] === 'number' ? body['offset'] : undefined,
     found: text(body['found']),
     remedy: text(body['remedy']),
+    reason: text(body['reason']),
     fields: toFieldErrors(body['fields']),
     ...retry,
   });
