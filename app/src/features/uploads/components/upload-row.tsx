@@ -60,7 +60,8 @@ function UploadNote({ entry: { capture, error } }: { entry: UploadEntry }) {
   if (error) {
     return (
       <p className="bl-arriving-note bl-arriving-fault">
-        {errorWords(error)} <code>{[error.facts.reason ?? error.code, offsetWords(error)].filter(Boolean).join(', ')}</code>
+        {errorWords(error)}{' '}
+        <code>{[error.facts.reason ?? error.code, offsetWords(error)].filter(Boolean).join(', ')}</code>
       </p>
     );
   }
