@@ -157,7 +157,7 @@ function finishIdle(
 
 function idleFigures(scan: ChannelScan, noise: NoiseReadings, mains: MainsHum | null): Figures {
   const level = (meanSquare: number): number | null => (meanSquare > 0 ? meanSquareToDbfs(meanSquare) : null);
-  const offset = Math.abs(scan.level.mean);
+  const offset = Math.abs(scan.constant);
   return {
     noiseDbfs: level(noise.flat.meanSquare),
     noiseAWeightedDbfs: level(noise.aWeighted.meanSquare),

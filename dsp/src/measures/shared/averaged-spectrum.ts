@@ -38,13 +38,16 @@ export function createSpectrumKit(
 
 export interface SpectrumAccumulator {
   push(samples: Float64Array): void;
-  finish(): PowerSpectrum;
+  finish(): { readonly spectrum: PowerSpectrum; readonly constant: number };
 }
 
 /**
  * Averages one channel's power spectra while samples stream past.
  *
  * @param kit - shared by the channels of an analysis, used by one at a time
+ * `finish` gives the constant part too, FS: the windowed mean, to which a tone adds nothing, as it would to the plain mean
+ * of a segment that doesn't hold whole periods.
+ *
  * @param onSpectrum - told each frame's transform, unscaled, its constant part taken out, and its first sample; reused arrays
  */
 export function createSpectrumAccumulator(
@@ -59,9 +62,11 @@ export function createSpectrumAccumulator(
   const im = new Float64Array(half + 1);
   const power = new Float64Array(half + 1);
   let averages = 0;
+  let sumOfConstants = 0;
   const walker = createFrameWalker(plan, (frame, index) => {
     for (let n = 0; n < fftLength; n++) weighted[n] = frame[n] * window.samples[n];
     kit.transform(weighted, re, im);
+    sumOfConstants += re[0] / (fftLength * window.coherentGain);
     takeOutConstant(re, window.name);
     for (let k = 0; k <= half; k++) power[k] += re[k] * re[k] + im[k] * im[k];
     averages++;
@@ -73,7 +78,7 @@ export function createSpectrumAccumulator(
       const scale = 2 / (fftLength * fftLength * window.powerGain * Math.max(1, averages));
       const scaled = power.map((value) => value * scale);
       scaled[half] /= 2; // half the rate stands for itself alone, every other bin for two
-      return {
+      const spectrum: PowerSpectrum = {
         sampleRateHz,
         fftLength,
         binWidthHz: sampleRateHz / fftLength,
@@ -84,6 +89,7 @@ export function createSpectrumAccumulator(
         ...kit.worth,
         power: scaled,
       };
+      return { spectrum, constant: sumOfConstants / Math.max(1, averages) };
     },
   };
 }

@@ -37,10 +37,10 @@ export function describeRecording(scan: ChannelScan, capture: CaptureFacts): War
     const peak = (20 * Math.log10(level.samplePeak)).toFixed(2);
     warnings.push(makeWarning('near-full-scale', { peak }, { channel, figures: ['samplePeakDbfs'] }));
   }
-  if (Math.abs(level.mean) >= OFFSET) {
+  if (Math.abs(scan.constant) >= OFFSET) {
     const values = {
-      offset: shortNumber(Number((level.mean * 100).toPrecision(2))),
-      level: shortLevel(20 * Math.log10(Math.abs(level.mean))),
+      offset: shortNumber(Number((scan.constant * 100).toPrecision(2))),
+      level: shortLevel(20 * Math.log10(Math.abs(scan.constant))),
     };
     warnings.push(makeWarning('dc-offset', values, { channel, figures: ['dcOffsetDbfs'] }));
   }

@@ -49,7 +49,7 @@ export function finishChannel(
   });
   const uncertainty = combineAll(draft, limits);
   const calibration = calibrationOf(settings.calibration, scan.channel);
-  const withVolts = addVolts({ figures: draft.figures, uncertainty }, calibration, scan.level.mean);
+  const withVolts = addVolts({ figures: draft.figures, uncertainty }, calibration, scan.constant);
   const isUncalibrated =
     settings.calibration !== null && settings.calibration !== undefined && calibration === null;
   return {

@@ -17,6 +17,8 @@ export interface ChannelScan {
   /** Greatest magnitude between samples too, FS. */
   readonly truePeak: number;
   readonly spectrum: PowerSpectrum;
+  /** DC offset, FS. */
+  readonly constant: number;
   /** null where no tone was looked for or found. */
   readonly tone: ToneTrack | null;
 }
@@ -70,7 +72,7 @@ export async function scanSegment(
     level: level.read(),
     // Faded ends must not hide a sample that was there.
     truePeak: Math.max(truePeak.read(), level.read().samplePeak),
-    spectrum: spectrum.finish(),
+    ...spectrum.finish(),
     tone: tracker?.finish() ?? null,
   }));
 }

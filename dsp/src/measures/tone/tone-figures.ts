@@ -64,7 +64,7 @@ export function toneFigures(scan: ChannelScan, parts: Distortion): Figures {
     samplePeakDbfs: finite(ratioToDb(scan.level.samplePeak)),
     truePeakDbtp: finite(ratioToDb(scan.truePeak)),
     crestFactorDb: finite(crestFactorDb(scan.level.samplePeak, scan.level.meanSquare)),
-    dcOffsetDbfs: finite(ratioToDb(Math.abs(scan.level.mean))),
+    dcOffsetDbfs: finite(ratioToDb(Math.abs(scan.constant))),
   };
 }
 

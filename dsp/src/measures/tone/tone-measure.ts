@@ -121,7 +121,7 @@ function finishTone(
       components: [],
       traces: {
         spectrum: spectrumTrace(scan.spectrum),
-        ...waveTraces(scan.tone, Math.sqrt(2 * parts.fundamental), scan.level.mean),
+        ...waveTraces(scan.tone, Math.sqrt(2 * parts.fundamental), scan.constant),
       },
     },
     warnings: toneWarnings(scan, scan.tone, parts, band, whole.knowledge.name === 'low-level-tone'),
