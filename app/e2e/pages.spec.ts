@@ -3,6 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Service } from '../../server/tools/service.mjs';
 import { axeFindings, openBrowser, openPage, signInAs } from './support/browser';
 import { startProduct } from './support/service';
+import { waitUntil } from './support/wait-until';
 
 interface Account {
   readonly email: string;
@@ -47,9 +48,10 @@ describe('the pages of a bench', () => {
     const listStates = async () =>
       (await getJson<{ items: { id: string; fileName: string; state: string }[] }>('/api/captures?limit=50'))
         .items;
-    await expect
-      .poll(async () => (await listStates()).every(({ state }) => state === 'done'), { timeout: 120_000 })
-      .toBe(true);
+    await waitUntil(async () => (await listStates()).every(({ state }) => state === 'done'), {
+      what: 'the demo captures are analysed',
+      timeoutMs: 120_000,
+    });
     const captures = await listStates();
     const named = (part: string): string => captures.find(({ fileName }) => fileName.includes(part))!.id;
     const units = await getJson<{ items: { id: string }[] }>('/api/units');
@@ -103,11 +105,14 @@ describe('the pages of a bench', () => {
       expect(await isScrollingSideways(page)).toBe(false);
     });
 
-    it.each(['/people', '/people/audit', '/people/jobs', '/people/mail', '/'])('administrator at %s', async (address) => {
-      const page = await visit('administrator', size, address);
-      expect(await axeFindings(page)).toEqual([]);
-      expect(await isScrollingSideways(page)).toBe(false);
-    });
+    it.each(['/people', '/people/audit', '/people/jobs', '/people/mail', '/'])(
+      'administrator at %s',
+      async (address) => {
+        const page = await visit('administrator', size, address);
+        expect(await axeFindings(page)).toEqual([]);
+        expect(await isScrollingSideways(page)).toBe(false);
+      },
+    );
 
     it.each(['/sign-in', '/lost-password'])('before signing in, at %s', async (address) => {
       const page = await visit('anonymous', size, address);

@@ -36,7 +36,8 @@ const words =
 const none: Conditions = () => null;
 
 const DB: DigitRule = { decimals: 1, mostDecimals: 2 };
-const PERCENT: DigitRule = { significant: 2 };
+/** Common practice: a percentage is given to two digits; a third where its uncertainty allows. */
+const PERCENT: DigitRule = { significant: 2, mostSignificant: 3 };
 const HZ: DigitRule = { decimals: 1, mostDecimals: 4 };
 const BITS: DigitRule = { decimals: 1, mostDecimals: 2 };
 

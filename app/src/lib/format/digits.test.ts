@@ -26,6 +26,8 @@ describe('decimalsFor', () => {
 
   it('never writes more decimals than a figure is ever worth', () => {
     expect(decimalsFor(-1.09, 0.0004, { decimals: 1, mostDecimals: 2 })).toBe(2);
+    expect(decimalsFor(0.0007349, 8e-7, { significant: 2, mostSignificant: 3 })).toBe(6);
+    expect(decimalsFor(0.021, 0.006, { significant: 2, mostSignificant: 3 })).toBe(3);
   });
 });
 

@@ -19,11 +19,16 @@ export interface DigitRule {
   readonly significant?: number;
   /** Never more decimals than these, however small the uncertainty. */
   readonly mostDecimals?: number;
+  /** Nor more significant digits than these. */
+  readonly mostSignificant?: number;
 }
 
 /** Decimals that a value is worth: its uncertainty's last digit, else the figure's own rule. */
 export function decimalsFor(value: number, expanded: number | null | undefined, rule: DigitRule): number {
-  const most = rule.mostDecimals ?? 9;
+  const most = Math.min(
+    rule.mostDecimals ?? 9,
+    rule.mostSignificant === undefined ? 9 : decimalsForSignificant(value, rule.mostSignificant),
+  );
   if (expanded !== null && expanded !== undefined && expanded > 0 && Number.isFinite(expanded)) {
     return Math.min(most, decimalsForUncertainty(expanded));
   }

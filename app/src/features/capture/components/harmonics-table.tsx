@@ -37,19 +37,16 @@ export function HarmonicsTable({ record }: { record: ServedRecord }) {
                     className="bl-table-number"
                     title={harmonic && formatFrequency(Math.round(harmonic.frequencyHz))}
                   >
-                    {harmonic?.levelDbr === null ? (
-                      <span className="bl-ink-2">in the noise</span>
-                    ) : (
-                      harmonic && (
-                        <Figure
-                          figureKey="harmonicLevelDbr"
-                          value={harmonic.levelDbr}
-                          integerCh={4}
-                          fractionCh={2}
-                          uncertaintyCh={0}
-                          hasWorth={false}
-                        />
-                      )
+                    {harmonic && (
+                      <Figure
+                        figureKey="harmonicLevelDbr"
+                        value={harmonic.levelDbr}
+                        missingWhy="It stands in the noise"
+                        integerCh={4}
+                        fractionCh={2}
+                        uncertaintyCh={0}
+                        hasWorth={harmonic.levelDbr === null}
+                      />
                     )}
                   </td>
                 );
