@@ -1,11 +1,12 @@
 import { DspInputError } from '../errors.js';
 import type { MeasureId } from '../record/record.js';
 import type { SampleSource } from '../source/sample-source.js';
+import { locateMarks } from '../stimulus/locate-marks.js';
+import { STIMULUS_KINDS } from '../stimulus/stimulus-kinds.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import type { AnalysisContext } from './measure.js';
 import { measures } from './registry.js';
 import { recogniseSignal } from './shared/recognise-signal.js';
-import { STIMULUS_MEASURES } from './shared/stimulus-knowledge.js';
 
 /** What a recording was taken for. */
 export interface Recognition {
@@ -20,8 +21,11 @@ export interface RecognitionOptions extends Pick<AnalysisContext, 'onProgress' |
   readonly descriptor?: StimulusDescriptor | null;
 }
 
+/** Share of the work that the search for marks takes. */
+const MARKS_SHARE = 0.5;
+
 /**
- * Tells what a recording holds: by the descriptor beside it, else by its signal.
+ * Tells what a recording holds: by the marks in it, else by the descriptor beside it, else by its signal.
  *
  * @throws DspInputError `NOT_RECOGNISED` with what was found; `EMPTY_SIGNAL`, `SEGMENT_TOO_SHORT`, `CANCELLED`
  */
@@ -29,23 +33,37 @@ export async function recognise(
   source: SampleSource,
   options: RecognitionOptions = {},
 ): Promise<Recognition> {
-  const { descriptor } = options;
-  if (descriptor) {
+  const { descriptor = null, signal, onProgress } = options;
+  const marks = await locateMarks(source, {
+    descriptor,
+    signal,
+    onProgress: (share) => onProgress?.(share * MARKS_SHARE),
+  });
+  const name = marks?.stimulusName ?? descriptor?.name ?? null;
+  if (name !== null) {
+    const where = marks?.stimulusName
+      ? 'the marks in the recording name'
+      : 'the descriptor beside the file names';
     return {
-      measure: measureOf(descriptor),
-      why: `the descriptor beside the file names the stimulus "${descriptor.name}"`,
-      stimulusName: descriptor.name,
+      measure: measureOf(name, descriptor),
+      why: `${where} the stimulus "${name}"`,
+      stimulusName: name,
     };
   }
-  return { ...(await recogniseSignal(source, options)), stimulusName: null };
+  const bySignal = await recogniseSignal(source, {
+    signal,
+    onProgress: (share) => onProgress?.(MARKS_SHARE + share * (1 - MARKS_SHARE)),
+  });
+  return { ...bySignal, stimulusName: null };
 }
 
-function measureOf(descriptor: StimulusDescriptor): MeasureId {
-  const id = STIMULUS_MEASURES[descriptor.name] ?? descriptor.parts[0]?.measure;
+function measureOf(name: string, descriptor: StimulusDescriptor | null): MeasureId {
+  const kind = STIMULUS_KINDS.find((entry) => entry.name === name);
+  const id = kind?.measure ?? (descriptor?.name === name ? descriptor.parts[0]?.measure : undefined);
   if (id !== undefined && measures.some((measure) => measure.id === id)) return id;
   throw new DspInputError(
     'NOT_RECOGNISED',
-    `the recording is one of the stimulus "${descriptor.name}", for which there is no measure`,
+    `the recording is one of the stimulus "${name}", for which there is no measure`,
     {
       remedy: 'Name a measure to look at it all the same.',
     },

@@ -24,8 +24,6 @@ import {
   type Band,
 } from '../shared/settings-band.js';
 import { spectrumTrace } from '../shared/spectrum-trace.js';
-import { gatherStimulus } from '../shared/stimulus-knowledge.js';
-import { stimulusMatch } from '../shared/scan-tones.js';
 import { powerDeviationDb } from '../shared/uncertainty.js';
 import { removeLobes } from '../../spectrum/remove-lobes.js';
 import { classifySpurs } from './classify-spurs.js';
@@ -58,8 +56,7 @@ async function analyseIdle(
   const highestHarmonic = settleHighestHarmonic(settings);
   const band = settleBand(settings, source.sampleRateHz, null);
   const selected = selectByName(source, settings);
-  const knowledge = await gatherStimulus(source, context, 'silence');
-  const range = await settleSegment(selected.source, settings, knowledge.part, true, context, progress);
+  const range = await settleSegment(selected.source, settings, null, true, context, progress);
   const plan = planFrames(range.to - range.from);
   const options = { plan, windowName: WINDOW, searches: selected.names.map(() => null) } as const;
   const scans = await scanSegment(selected.source, selected.names, range, options, context, progress);
@@ -86,7 +83,14 @@ async function analyseIdle(
     bandHighHz: band.highHz,
     highestHarmonic,
     reference: { unitFullScaleDbfs: null, from: null },
-    stimulus: stimulusMatch(knowledge, null),
+    // Silence has no marks: only a descriptor can name it.
+    stimulus: {
+      name: context.descriptor?.name ?? 'silence',
+      recognisedBy: context.descriptor ? 'descriptor' : 'signal',
+      delayS: null,
+      clockOffsetPpm: null,
+      polarity: null,
+    },
     channels: finished.map(({ result }) => result),
     warnings: [
       ...band.warnings,

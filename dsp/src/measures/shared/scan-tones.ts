@@ -11,7 +11,7 @@ import { planFrames, type FramePlan } from './plan-frames.js';
 import { createProgress } from './progress.js';
 import { scanSegment, type ChannelScan } from './scan-segment.js';
 import { shortNumber } from './settings-band.js';
-import { gatherStimulus, type StimulusKnowledge } from './stimulus-knowledge.js';
+import { cutWarnings, gatherStimulus, type StimulusKnowledge } from './stimulus-knowledge.js';
 import type { FrameRange } from './stream-frames.js';
 import type { ToneSearch } from './tone-tracker.js';
 
@@ -23,7 +23,9 @@ const COMFORTABLE = 4;
 const BEARABLE = 2;
 const NEAR_NOMINAL = 0.02;
 /** Share of the work that finding the segment takes, when levels must tell. */
-const SURVEY_SHARE = 0.25;
+const SURVEY_SHARE = 0.15;
+/** … and the search for marks before it. */
+const MARKS_SHARE = 0.25;
 
 export interface ToneScan {
   readonly selected: SelectedChannels;
@@ -57,9 +59,11 @@ export async function scanTones(
 ): Promise<ToneScan> {
   const progress = createProgress(context.onProgress);
   const selected = selectByName(source, settings);
-  const knowledge = await gatherStimulus(source, context, options.assumedStimulus);
+  const knowledge = await gatherStimulus(source, context, options.assumedStimulus, (share) =>
+    progress(share * MARKS_SHARE),
+  );
   const range = await settleSegment(selected.source, settings, knowledge.part, false, context, (share) => {
-    progress(share * SURVEY_SHARE);
+    progress(MARKS_SHARE + share * SURVEY_SHARE);
   });
   const plan = planFrames(range.to - range.from);
   const nominalHz = knowledge.frequencyHz;
@@ -77,7 +81,7 @@ export async function scanTones(
     range,
     { plan, windowName: choice.windowName, searches: sights.map((sight) => sight?.search ?? null) },
     context,
-    (share) => progress(SURVEY_SHARE + share * (1 - SURVEY_SHARE)),
+    (share) => progress(MARKS_SHARE + SURVEY_SHARE + share * (1 - MARKS_SHARE - SURVEY_SHARE)),
   );
   if (channels.every(({ tone }) => tone === null)) throw nothingMeasurable();
   return {
@@ -89,6 +93,7 @@ export async function scanTones(
     knowledge,
     isTooShort: choice.isTooShort,
     warnings: [
+      ...cutWarnings(knowledge, context),
       ...(choice.isTooShort
         ? [tooShortWarning(lowestHz, source.sampleRateHz, range, choice.windowName, plan)]
         : []),
@@ -152,11 +157,7 @@ export function stimulusMatch(knowledge: StimulusKnowledge, measuredHz: number |
   const { name, recognisedBy, delayS, polarity, frequencyHz } = knowledge;
   const isSame =
     measuredHz !== null && frequencyHz !== null && Math.abs(measuredHz / frequencyHz - 1) <= NEAR_NOMINAL;
-  return {
-    name,
-    recognisedBy,
-    delayS,
-    clockOffsetPpm: isSame ? (measuredHz / frequencyHz - 1) * 1e6 : null,
-    polarity,
-  };
+  // A tone tells the clocks' offset better than the few milliseconds between marks.
+  const clockOffsetPpm = isSame ? (measuredHz / frequencyHz - 1) * 1e6 : knowledge.clockOffsetPpm;
+  return { name, recognisedBy, delayS, clockOffsetPpm, polarity };
 }

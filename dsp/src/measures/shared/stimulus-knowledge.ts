@@ -1,5 +1,8 @@
-import type { MeasureId, StimulusMatch } from '../../record/record.js';
+import { makeWarning } from '../../record/make-warning.js';
+import type { StimulusMatch, Warning } from '../../record/record.js';
 import type { SampleSource } from '../../source/sample-source.js';
+import { locateMarks, type MarkMatch } from '../../stimulus/locate-marks.js';
+import { STIMULUS_KINDS } from '../../stimulus/stimulus-kinds.js';
 import type { AnalysisContext } from '../measure.js';
 import type { KnownPart } from './open-analysis.js';
 
@@ -8,6 +11,7 @@ export interface StimulusKnowledge {
   readonly name: string;
   readonly recognisedBy: StimulusMatch['recognisedBy'];
   readonly delayS: number | null;
+  readonly clockOffsetPpm: number | null;
   readonly polarity: StimulusMatch['polarity'];
   /** Where its body lies in the recording; null when levels must tell. */
   readonly part: KnownPart | null;
@@ -15,37 +19,70 @@ export interface StimulusKnowledge {
   readonly levelDbfs: number | null;
 }
 
-/** The measure that reads each stimulus best. */
-export const STIMULUS_MEASURES: Readonly<Record<string, MeasureId>> = {
-  sine: 'tone',
-  'low-level-tone': 'dynamic-range',
-  silence: 'idle',
-};
+/** Filters of player and recorder ring on past a body's ramps for less than this. */
+const SETTLING_S = 0.05;
+const SHORTEST_BODY_S = 0.2;
 
 /**
  * Gathers what marks and descriptor say of the stimulus.
  *
- * @param source - the capture whole
+ * @param source - the capture whole; read once from end to end
  * @param assumedName - what the measure takes the recording for when nothing says
+ * @returns frequency and level where they are known: the marks name a kind with its default parameters, but the level only of
+ *   kinds whose figures rest on it (others may have been scaled as a whole)
  */
 export async function gatherStimulus(
   source: SampleSource,
-  context: AnalysisContext,
+  context: Pick<AnalysisContext, 'descriptor' | 'signal'>,
   assumedName: string,
+  onShare: (share: number) => void = () => undefined,
 ): Promise<StimulusKnowledge> {
-  const { descriptor } = context;
-  await Promise.resolve(source);
+  const { descriptor = null, signal } = context;
+  const marks = await locateMarks(source, { descriptor, signal, onProgress: onShare });
+  const name = marks?.stimulusName ?? descriptor?.name ?? assumedName;
+  const kind = marks === null ? undefined : STIMULUS_KINDS.find((entry) => entry.name === marks.stimulusName);
   const parameter = (key: string): number | null => {
     const value = descriptor?.parameters[key];
     return typeof value === 'number' && Number.isFinite(value) ? value : null;
   };
   return {
-    name: descriptor?.name ?? assumedName,
-    recognisedBy: descriptor ? 'descriptor' : 'signal',
-    delayS: null,
-    polarity: null,
-    part: null,
-    frequencyHz: parameter('frequencyHz'),
-    levelDbfs: parameter('levelDbfs'),
+    name,
+    recognisedBy: marks !== null ? 'marks' : descriptor !== null ? 'descriptor' : 'signal',
+    delayS: marks?.delayS ?? null,
+    clockOffsetPpm: marks?.clockOffsetPpm ?? null,
+    polarity: marks?.polarity ?? null,
+    part: marks === null ? null : settledBody(marks),
+    frequencyHz: parameter('frequencyHz') ?? kind?.tone?.frequencyHz ?? null,
+    levelDbfs:
+      parameter('levelDbfs') ?? (kind?.isLevelNamed === true ? (kind.tone?.levelDbfs ?? null) : null),
   };
+}
+
+/** A body too short to hold a measure leaves the place to the levels. */
+function settledBody({ bodyFromS, bodyToS }: MarkMatch): KnownPart | null {
+  if (bodyToS - bodyFromS < SHORTEST_BODY_S) return null;
+  const settling = Math.min(SETTLING_S, (bodyToS - bodyFromS) / 8);
+  return { fromS: bodyFromS + settling, toS: bodyToS - settling };
+}
+
+/** What the capture as a whole lacks of the stimulus; nothing where neither marks nor a descriptor tell. */
+export function cutWarnings(
+  { delayS }: StimulusKnowledge,
+  { capture, descriptor }: Pick<AnalysisContext, 'capture' | 'descriptor'>,
+): Warning[] {
+  if (delayS === null) return [];
+  const warnings: Warning[] = [];
+  if (delayS < 0)
+    warnings.push(
+      makeWarning('recording-cut', { where: `began ${(-delayS).toFixed(2)} s after the stimulus` }),
+    );
+  const missingS = descriptor
+    ? delayS + descriptor.frameCount / descriptor.sampleRateHz - capture.durationS
+    : 0;
+  // Clocks 200 ppm apart move the end of a long file by some hundredths of a second.
+  if (missingS > 0.1)
+    warnings.push(
+      makeWarning('recording-cut', { where: `ended ${missingS.toFixed(2)} s before the stimulus` }),
+    );
+  return warnings;
 }
