@@ -15,44 +15,32 @@ export interface RealFft {
   transform(samples: Float64Array, re: Float64Array, im: Float64Array): void;
 }
 
-/** Transforms the complex sequence that real samples make in pairs: even ones real, odd ones imaginary. */
-type PackedTransform = (samples: Float64Array, re: Float64Array, im: Float64Array) => void;
-
-/** Plans it for `length` complex points; works between the output and one buffer of its own. */
-function createPackedTransform(length: number): PackedTransform {
-  const plan = createStockhamPlan(length);
-  const bufferRe = new Float64Array(length);
-  const bufferIm = new Float64Array(length);
-  const isEven = plan.passCount % 2 === 0;
-  return (samples, re, im) => {
-    const firstRe = isEven ? re : bufferRe;
-    const firstIm = isEven ? im : bufferIm;
-    for (let n = 0; n < length; n++) {
-      firstRe[n] = samples[2 * n];
-      firstIm[n] = samples[2 * n + 1];
-    }
-    runPasses(plan, 1, 0, firstRe, firstIm, isEven ? bufferRe : re, isEven ? bufferIm : im);
-  };
-}
-
-/** Turns the transform of the packed sequence, half = N/2 points, into that of the real one, in place. */
+/**
+ * Turns the transform of the packed sequence (even samples real, odd ones imaginary) into that of the real one.
+ *
+ * @param packed - half = N/2 points, re and im in turn
+ */
 function unpack(
   half: number,
   cos: Float64Array,
   sin: Float64Array,
+  packed: Float64Array,
   re: Float64Array,
   im: Float64Array,
 ): void {
-  const re0 = re[0];
-  re[0] = re0 + im[0];
-  re[half] = re0 - im[0];
+  re[0] = packed[0] + packed[1];
+  re[half] = packed[0] - packed[1];
   im[0] = 0;
   im[half] = 0;
   for (let k = 1, m = half - 1; k <= m; k++, m--) {
-    const evenRe = 0.5 * (re[k] + re[m]);
-    const evenIm = 0.5 * (im[k] - im[m]);
-    const oddRe = 0.5 * (im[k] + im[m]);
-    const oddIm = 0.5 * (re[m] - re[k]);
+    const kr = packed[2 * k];
+    const ki = packed[2 * k + 1];
+    const mr = packed[2 * m];
+    const mi = packed[2 * m + 1];
+    const evenRe = 0.5 * (kr + mr);
+    const evenIm = 0.5 * (ki - mi);
+    const oddRe = 0.5 * (ki + mi);
+    const oddIm = 0.5 * (mr - kr);
     const turnedRe = oddRe * cos[k] + oddIm * sin[k];
     const turnedIm = oddIm * cos[k] - oddRe * sin[k];
     re[k] = evenRe + turnedRe;
@@ -76,7 +64,8 @@ export function createRealFft(length: number): RealFft {
     );
   }
   const half = length / 2;
-  const transformPacked = createPackedTransform(half);
+  const plan = createStockhamPlan(half);
+  const buffers = [new Float64Array(length), new Float64Array(length)] as const;
   const cos = new Float64Array((half >> 1) + 1);
   const sin = new Float64Array((half >> 1) + 1);
   for (let k = 0; k < cos.length; k++) {
@@ -92,8 +81,7 @@ export function createRealFft(length: number): RealFft {
           `the transform takes ${length} samples and gives ${half + 1} bins`,
         );
       }
-      transformPacked(samples, re, im);
-      unpack(half, cos, sin, re, im);
+      unpack(half, cos, sin, runPasses(plan, samples, buffers), re, im);
     },
   };
 }
