@@ -67,13 +67,20 @@ export function createLevelMeter(options: LevelMeterOptions = {}): LevelMeter {
         const to = Math.min(samples.length, from + BLOCK);
         let blockSum = 0;
         let blockSquares = 0;
+        let blockLowest = lowest;
+        let blockHighest = highest;
         for (let n = from; n < to; n++) {
           const value = samples[n];
           blockSum += value;
           blockSquares += value * value;
-          if (value > highest) highest = value;
-          if (value < lowest) lowest = value;
-          if (value >= highestCode || value <= -1 || runSide !== 0) followEndCode(value);
+          if (value > blockHighest) blockHighest = value;
+          if (value < blockLowest) blockLowest = value;
+        }
+        lowest = blockLowest;
+        highest = blockHighest;
+        // Most recordings never reach an end code: they are spared this second look.
+        if (highest >= highestCode || lowest <= -1) {
+          for (let n = from; n < to; n++) followEndCode(samples[n]);
         }
         sum += blockSum;
         sumOfSquares += blockSquares;

@@ -64,11 +64,11 @@ export function createSpectrumAccumulator(
   let averages = 0;
   let sumOfConstants = 0;
   const walker = createFrameWalker(plan, (frame, index) => {
-    for (let n = 0; n < fftLength; n++) weighted[n] = frame[n] * window.samples[n];
+    weigh(frame, window.samples, weighted);
     kit.transform(weighted, re, im);
     sumOfConstants += re[0] / (fftLength * window.coherentGain);
     takeOutConstant(re, window.name);
-    for (let k = 0; k <= half; k++) power[k] += re[k] * re[k] + im[k] * im[k];
+    addPower(re, im, power);
     averages++;
     onSpectrum({ re, im }, plan.starts[index]);
   });
@@ -92,6 +92,16 @@ export function createSpectrumAccumulator(
       return { spectrum, constant: sumOfConstants / Math.max(1, averages) };
     },
   };
+}
+
+// Functions of their own, so that the arrays are locals and not looked up anew at each value.
+
+function weigh(frame: Float64Array, shape: Float64Array, weighted: Float64Array): void {
+  for (let n = 0; n < weighted.length; n++) weighted[n] = frame[n] * shape[n];
+}
+
+function addPower(re: Float64Array, im: Float64Array, power: Float64Array): void {
+  for (let k = 0; k < power.length; k++) power[k] += re[k] * re[k] + im[k] * im[k];
 }
 
 /**
