@@ -1,8 +1,8 @@
 // npm run setup: packages, PostgreSQL, builds. Does only what has changed since the last time.
 import path from 'node:path';
+import { fileURLToPath } from 'node:url';
 import { ensurePostgres } from './postgres.mjs';
 import { ROOT, RUN_DIR, onceFor, runShown } from './workspace.mjs';
-import { fileURLToPath } from 'node:url';
 
 const CONFIG = ['package-lock.json', 'tsconfig.base.json'];
 
@@ -15,22 +15,11 @@ function checkNode() {
 
 export async function installPackages() {
   checkNode();
-  const manifests = [
-    'package-lock.json',
-    'package.json',
-    'dsp/package.json',
-    'server/package.json',
-    'app/package.json',
-  ];
-  await onceFor(
-    path.join(ROOT, 'node_modules/.benchlark-stamp'),
-    manifests,
-    path.join(ROOT, 'node_modules'),
-    () => {
-      console.log('Installing packages ...');
-      runShown('npm', ['ci', '--no-audit', '--no-fund']);
-    },
-  );
+  const modules = path.join(ROOT, 'node_modules');
+  await onceFor(path.join(modules, '.benchlark-stamp'), ['package-lock.json'], modules, () => {
+    console.log('Installing packages ...');
+    runShown('npm', ['ci', '--no-audit', '--no-fund']);
+  });
 }
 
 const stamp = (name) => path.join(RUN_DIR, 'stamps', name);

@@ -18,7 +18,7 @@ export async function writeTone(file, durationS) {
     sampleRateHz,
     channelCount: 2,
     frameCount,
-    format: 24,
+    bits: 24,
     dither: 'tpdf',
     seed: 7,
   });
