@@ -54,8 +54,11 @@ export function buildFigureTable(record: FigureRecord): FigureTable {
     rows,
     integerCh: widest(texts.map(({ integer, bound }) => integer.length + (bound ? 1 : 0))),
     fractionCh: Math.min(MOST_FRACTION_CH, widest(texts.map(({ fraction }) => fraction.length))),
+    // A percentage's long ± would push every other row's mark away from its value.
     uncertaintyCh: widest(
-      texts.map(({ plusMinus, bound }) => (bound ? 'bound'.length : (plusMinus?.length ?? 0))),
+      texts
+        .filter(({ fraction }) => fraction.length <= MOST_FRACTION_CH)
+        .map(({ plusMinus, bound }) => (bound ? 'bound'.length : (plusMinus?.length ?? 0))),
     ),
     hasRig: rows.some(({ rig }) => rig !== null),
     worths: [...new Set(worths)],
