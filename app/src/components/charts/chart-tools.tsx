@@ -37,7 +37,7 @@ export function ChartTools(props: ChartToolsProps) {
       <button type="button" className="bl-word" disabled={isDisabled || !isZoomed} onClick={onReset}>
         Reset
       </button>
-      <DropdownMenu.Root>
+      <DropdownMenu.Root modal={false}>
         <DropdownMenu.Trigger disabled={isDisabled}>
           <button type="button" className="bl-word">
             Export

@@ -117,7 +117,8 @@ export function Chart(props: ChartProps) {
         style={{ height: heightPx }}
         role="group"
         aria-roledescription="chart"
-        aria-label={isReady ? `${title}. ${inWords}` : title}
+        aria-label={title}
+        aria-describedby={isReady ? `${wordsId}-said` : undefined}
         tabIndex={isReady ? 0 : undefined}
         onKeyDown={keys.onKeyDown}
         onDoubleClick={chartView.reset}
@@ -134,6 +135,9 @@ export function Chart(props: ChartProps) {
         {scene && isReady && cursor.readout && <ChartReadout scene={scene} readout={cursor.readout} />}
         {!isReady && <ChartStateWords state={state} />}
       </div>
+      <p id={`${wordsId}-said`} className="bl-hidden">
+        {isReady && inWords}
+      </p>
       <p className="bl-hidden" aria-live="polite">
         {cursor.spoken}
       </p>

@@ -12,6 +12,9 @@ export const LINE_ABOVE_DB = 12;
 /** Columns at each side that make the neighbourhood. */
 const NEIGHBOURS = 12;
 
+/** Power ratio of one decibel, as an exponent of e: exp is quicker than a power of ten. */
+const NEPERS_PER_DB = Math.LN10 / 10;
+
 interface Columns {
   readonly x: ArrayLike<number>;
   readonly y: ArrayLike<number>;
@@ -90,7 +93,7 @@ function gatherColumns({ x, y, from, to, edges }: Columns): Column[] {
       const level = y[index] ?? NaN;
       xLast = x[index] ?? xLast;
       if (Number.isNaN(level)) continue;
-      power += 10 ** (level / 10);
+      power += Math.exp(level * NEPERS_PER_DB);
       count += 1;
       if (level > maxDb) {
         maxDb = level;
@@ -118,6 +121,18 @@ function medianAround(columns: readonly Column[], index: number): number {
   return window[window.length >>> 1] ?? -Infinity;
 }
 
+/** Whether a column's maximum stands over its neighbourhood; most are ruled out without sorting anything. */
+function isLineAt(columns: readonly Column[], index: number): boolean {
+  const { count, maxDb } = columns[index] ?? { count: 0, maxDb: -Infinity };
+  if (count < 2) return false;
+  let leastDb = Infinity;
+  const last = Math.min(columns.length - 1, index + NEIGHBOURS);
+  for (let at = Math.max(0, index - NEIGHBOURS); at <= last; at += 1) {
+    leastDb = Math.min(leastDb, columns[at]?.meanDb ?? Infinity);
+  }
+  return maxDb - leastDb > LINE_ABOVE_DB && maxDb - medianAround(columns, index) > LINE_ABOVE_DB;
+}
+
 function meanWithLines(columns: Columns): DrawnPoints {
   const gathered = gatherColumns(columns);
   const points = {
@@ -126,7 +141,7 @@ function meanWithLines(columns: Columns): DrawnPoints {
     count: new Uint32Array(gathered.length),
   };
   gathered.forEach((column, index) => {
-    const isLine = column.count > 1 && column.maxDb - medianAround(gathered, index) > LINE_ABOVE_DB;
+    const isLine = isLineAt(gathered, index);
     points.x[index] = isLine ? column.xOfMax : column.xMiddle;
     points.y[index] = isLine ? column.maxDb : column.meanDb;
     points.count[index] = isLine ? 1 : column.count;

@@ -45,14 +45,22 @@ function peakNear({ x, y }: Pick<SpectrumChannel, 'x' | 'y'>, frequencyHz: numbe
   return near.length === 0 ? null : near.reduce((greatest, level) => Math.max(greatest, level), -Infinity);
 }
 
+/** Enough of a spectrum's points to know where its noise lies. */
+const SAMPLED_POINTS = 2000;
+
 /** From a little under the noise to the next 20 dB over the highest line. */
 function levelRange(channels: readonly Pick<SpectrumChannel, 'y'>[]): { min: number; max: number } {
-  const levels = channels.flatMap(({ y }) => {
-    const step = Math.max(1, Math.floor(y.length / 4000));
-    return Array.from({ length: Math.floor(y.length / step) }, (_, index) => y[index * step] ?? NaN);
-  });
-  const sorted = levels.filter(Number.isFinite).sort((a, b) => a - b);
-  const highest = channels.reduce((top, { y }) => y.reduce((a, b) => Math.max(a, b), top), -Infinity);
+  let highest = -Infinity;
+  const sampled: number[] = [];
+  for (const { y } of channels) {
+    const step = Math.max(1, Math.floor(y.length / SAMPLED_POINTS));
+    for (let index = 0; index < y.length; index += 1) {
+      const level = y[index] ?? NaN;
+      if (level > highest) highest = level;
+      if (index % step === 0 && Number.isFinite(level)) sampled.push(level);
+    }
+  }
+  const sorted = Float64Array.from(sampled).sort();
   const low = sorted[Math.floor(sorted.length * 0.01)] ?? -160;
   const max = Math.max(
     0,

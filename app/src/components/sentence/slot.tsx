@@ -59,7 +59,7 @@ export function SlotSelect<Value extends string>({
 }: SlotSelectProps<Value>) {
   const text = options.find((option) => option.value === value)?.label ?? value;
   return (
-    <DropdownMenu.Root>
+    <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger disabled={isDisabled}>
         <SlotButton label={label} text={text} isChanged={isChanged} />
       </DropdownMenu.Trigger>

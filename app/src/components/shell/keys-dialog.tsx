@@ -48,9 +48,9 @@ export function KeysDialog({
     <Dialog.Root open={isOpen} onOpenChange={onOpenChange}>
       <Dialog.Content maxWidth="520px" aria-describedby={undefined}>
         <Dialog.Title size="4">Keys</Dialog.Title>
-        <h3 className="bl-keys-head">On every page</h3>
+        <h2 className="bl-keys-head">On every page</h2>
         <KeyRows rows={[...PAGE_KEYS, ...goKeys]} />
-        <h3 className="bl-keys-head">On a chart that has the focus</h3>
+        <h2 className="bl-keys-head">On a chart that has the focus</h2>
         <KeyRows rows={CHART_KEYS} />
         <Flex mt="4" justify="end">
           <Dialog.Close>

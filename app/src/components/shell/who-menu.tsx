@@ -19,7 +19,7 @@ export interface WhoMenuProps {
 export function WhoMenu({ person, onKeys, onSignOut }: WhoMenuProps) {
   const { choice, setChoice } = useTheme();
   return (
-    <DropdownMenu.Root>
+    <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger>
         <button type="button" className="bl-who">
           <strong>{person.displayName}</strong>
