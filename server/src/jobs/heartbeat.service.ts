@@ -8,6 +8,8 @@ import { enqueueAnalysis } from './job-queue';
 const REAPER_LOCK = 1_764_580_060;
 /** A waiting job without a place in the queue is given one after this; until then its transaction may be under way. */
 const LOST_AFTER_S = 15;
+/** The queue doubles its wait at each lost connection; once the database is back, nobody need wait longer than this. */
+const LONGEST_WAIT_S = 5;
 
 /**
  * Keeps this worker's row alive and takes back what dead workers held.
@@ -78,6 +80,11 @@ export class Heartbeat {
           [ids],
         );
       }
+      await tx.query(
+        `UPDATE graphile_worker._private_jobs SET run_at = now()
+         WHERE key LIKE 'analysis:%' AND locked_at IS NULL AND run_at > now() + $1 * interval '1 second'`,
+        [LONGEST_WAIT_S],
+      );
       const lost = await tx.query<{ id: string; priority: number }[]>(
         `SELECT j.id, j.priority FROM analysis_job AS j
          WHERE j.state IN ('queued', 'running') AND j.created_at < now() - $1 * interval '1 second'
