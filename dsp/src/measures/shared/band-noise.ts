@@ -1,6 +1,7 @@
 import { bandBins } from '../../spectrum/integrate-band.js';
 import type { PowerSpectrum } from '../../spectrum/power-spectrum.js';
 import { weightingPower, type WeightingName } from '../../weighting/weighting-curves.js';
+import { binVariances } from './bin-variance.js';
 
 /** Noise in a band and how surely it is known. */
 export interface BandNoise {
@@ -14,7 +15,8 @@ export interface BandNoise {
  * Sums a power spectrum over a band; a bin counts when its centre is inside.
  *
  * @param power - FS² a bin: the spectrum's own, or with lobes refilled; not modified
- * @returns the sum, and the variance that a sum of noise so distributed has after the spectrum's averages
+ * @param variances - of each bin before averaging; those of noise and steady lines unless given
+ * @returns the sum, and its variance after the spectrum's averages
  * @see P. D. Welch, "The use of fast Fourier transform for the estimation of power spectra", IEEE Trans. AU-15, 1967
  */
 export function bandNoise(
@@ -22,16 +24,17 @@ export function bandNoise(
   power: Float64Array,
   band: { readonly lowHz: number; readonly highHz: number },
   weighting: WeightingName = 'none',
+  variances: Float64Array = binVariances(power),
 ): BandNoise {
   const { first, last } = bandBins(spectrum, band.lowHz, band.highHz);
   let sum = 0;
-  let sumOfSquares = 0;
+  let variance = 0;
   for (let k = first; k <= last; k++) {
-    const value = power[k] * (weighting === 'none' ? 1 : weightingPower(weighting, k * spectrum.binWidthHz));
-    sum += value;
-    sumOfSquares += value * value;
+    const weight = weighting === 'none' ? 1 : weightingPower(weighting, k * spectrum.binWidthHz);
+    sum += power[k] * weight;
+    variance += variances[k] * weight * weight;
   }
-  return { meanSquare: sum, variance: (sumOfSquares * spectrum.binCorrelation) / spectrum.effectiveAverages };
+  return { meanSquare: sum, variance: (variance * spectrum.binCorrelation) / spectrum.effectiveAverages };
 }
 
 /** The three readings of a noise that records give. */
@@ -47,9 +50,10 @@ export function readNoise(
   power: Float64Array,
   band: { readonly lowHz: number; readonly highHz: number },
 ): NoiseReadings {
+  const variances = binVariances(power);
   return {
-    flat: bandNoise(spectrum, power, band),
-    aWeighted: bandNoise(spectrum, power, band, 'a'),
-    itu468Rms: bandNoise(spectrum, power, band, 'itu-468-rms'),
+    flat: bandNoise(spectrum, power, band, 'none', variances),
+    aWeighted: bandNoise(spectrum, power, band, 'a', variances),
+    itu468Rms: bandNoise(spectrum, power, band, 'itu-468-rms', variances),
   };
 }

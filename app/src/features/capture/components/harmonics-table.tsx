@@ -42,8 +42,8 @@ export function HarmonicsTable({ record }: { record: ServedRecord }) {
                         figureKey="harmonicLevelDbr"
                         value={harmonic.levelDbr}
                         missingWhy="It stands in the noise"
-                        integerCh={4}
-                        fractionCh={2}
+                        integerCh={harmonic.levelDbr === null ? 1 : 4}
+                        fractionCh={harmonic.levelDbr === null ? 0 : 2}
                         uncertaintyCh={0}
                         hasWorth={harmonic.levelDbr === null}
                       />
