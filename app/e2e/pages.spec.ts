@@ -1,15 +1,9 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Service } from '../../server/tools/service.mjs';
-import { axeFindings, openBrowser, openPage, signInAs } from './support/browser';
+import { axeFindings, demoAccount, openBrowser, openPage, signInAs } from './support/browser';
 import { startProduct } from './support/service';
 import { waitUntil } from './support/wait-until';
-
-interface Account {
-  readonly email: string;
-  readonly password: string;
-  readonly roles: readonly string[];
-}
 
 const SIZES = [
   { width: 1440, theme: 'light' },
@@ -28,16 +22,11 @@ describe('the pages of a bench', () => {
   beforeAll(async () => {
     service = await startProduct({ isDemo: true });
     browser = await openBrowser();
-    const { demo } = (await (await fetch(`${service.url}/api/session`)).json()) as {
-      demo: { accounts: Account[] };
-    };
-    const holding = (role: string): Account => demo.accounts.find(({ roles }) => roles.includes(role))!;
     for (const size of SIZES) {
       for (const role of ['anonymous', 'reviewer', 'administrator']) {
         const opened = await openPage(browser, size);
         if (role !== 'anonymous') {
-          const { email, password } = holding(role);
-          await signInAs(opened.page, service.url, email, password);
+          await signInAs(opened.page, service.url, await demoAccount(service.url, role));
         }
         pages.set(`${role} ${size.width} ${size.theme}`, opened);
       }

@@ -3,6 +3,7 @@ import { LoggerModule } from 'nestjs-pino';
 import { AuditModule } from './audit/audit.module';
 import { AccessModule } from './auth/access.module';
 import { loggerOptions } from './common/logger-options';
+import { RequestThrottleModule } from './common/request-throttle.module';
 import { ShutdownModule } from './common/shutdown-state';
 import { EnvModule } from './config/env.module';
 import type { Env } from './config/env.schema';
@@ -33,6 +34,7 @@ export class AppModule {
         EnvModule.with(env),
         LoggerModule.forRoot(loggerOptions(env)),
         ShutdownModule,
+        RequestThrottleModule,
         DatabaseModule,
         HealthModule,
         AuditModule,

@@ -31,7 +31,19 @@ export async function openPage(
   return { page, faults };
 }
 
-export async function signInAs(page: Page, url: string, email: string, password: string): Promise<void> {
+export interface Account {
+  readonly email: string;
+  readonly password: string;
+}
+
+/** The demo account that holds a role. */
+export async function demoAccount(url: string, role: string): Promise<Account> {
+  const answer = await fetch(`${url}/api/session`);
+  const { demo } = (await answer.json()) as { demo: { accounts: (Account & { roles: string[] })[] } };
+  return demo.accounts.find(({ roles }) => roles.includes(role))!;
+}
+
+export async function signInAs(page: Page, url: string, { email, password }: Account): Promise<void> {
   await page.goto(`${url}/sign-in`);
   await page.getByLabel('E-mail').fill(email);
   await page.getByLabel('Password', { exact: true }).fill(password);

@@ -1,4 +1,4 @@
-import { Body, Controller, Post, Req, Res } from '@nestjs/common';
+import { Body, Controller, Post, Req, Res, UseGuards } from '@nestjs/common';
 import { ApiCreatedResponse, ApiNotFoundResponse, ApiTags } from '@nestjs/swagger';
 import type { Response } from 'express';
 import { addressKey, AttemptsService } from '../auth/attempts/attempts.service';
@@ -8,6 +8,7 @@ import { actorOf, type AppRequest } from '../common/actor';
 import { Public } from '../common/roles';
 import { BenchService } from './bench.service';
 import { SetupDto } from './dto/setup.dto';
+import { FirstRunGuard } from './first-run.guard';
 
 @ApiTags('session')
 @Controller('setup')
@@ -21,6 +22,7 @@ export class SetupController {
   /** Makes the first administrator of an empty bench, who is signed in at once. */
   @Post()
   @Public()
+  @UseGuards(FirstRunGuard)
   @ApiCreatedResponse({ type: SessionDto })
   @ApiNotFoundResponse({ description: 'This bench has been set up' })
   async setUp(

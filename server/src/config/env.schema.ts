@@ -53,6 +53,7 @@ export const envSchema = z
       .default(resolve(__dirname, '../../../app/dist'))
       .transform((path) => resolve(path)),
     SHUTDOWN_DEADLINE_MS: positiveInteger(20_000),
+    REQUESTS_PER_MINUTE: positiveInteger(3_000),
     DEMO: z.stringbool().default(false),
 
     DATABASE_URL: z.url({ protocol: /^postgres(ql)?$/ }),

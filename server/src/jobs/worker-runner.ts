@@ -39,6 +39,10 @@ export class WorkerRunner {
       connectionTimeoutMillis: 3_000,
     });
     pool.on('error', (error) => this.#logger.warn(`the queue's connection was lost: ${error.message}`));
+    // A connection that breaks while it is lent out says so itself; without a listener that would end the process.
+    pool.on('connect', (client) =>
+      client.on('error', (error) => this.#logger.warn(`a connection broke: ${error.message}`)),
+    );
     this.#pool = pool;
     this.#runner = await run({
       pgPool: pool,
