@@ -146,4 +146,21 @@ describe('the sweep', () => {
       await bench.close();
     }
   });
+
+  it('forgets counts of attempts that are two days old, and no others', async () => {
+    const bench = await createBench();
+    try {
+      await bench.dataSource.query(
+        `INSERT INTO attempt (key, count, updated_at, blocked_until) VALUES
+           ('old', 3, now() - interval '3 days', NULL),
+           ('old but blocked', 9, now() - interval '3 days', now() + interval '1 hour'),
+           ('new', 1, now(), NULL)`,
+      );
+      await bench.app.get(SweepService).forgetOldRows();
+      const rows = await bench.dataSource.query<{ key: string }[]>('SELECT key FROM attempt ORDER BY key');
+      expect(rows.map(({ key }) => key)).toEqual(['new', 'old but blocked']);
+    } finally {
+      await bench.close();
+    }
+  });
 });

@@ -1,25 +1,5 @@
 import { figureUnit, type FigureUnit, type FigureUncertainty, type FigureValue } from '@benchlark/dsp';
 
-const UNIT_TEXT: Readonly<Record<FigureUnit, string>> = {
-  Dbfs: 'dBFS',
-  Dbtp: 'dBTP',
-  Dbr: 'dBr',
-  Dbv: 'dBV',
-  Db: 'dB',
-  Lufs: 'LUFS',
-  Lu: 'LU',
-  Percent: '%',
-  Hz: 'Hz',
-  Ppm: 'ppm',
-  Ps: 'ps',
-  Deg: '°',
-  Bits: 'bits',
-  Count: '',
-  Ratio: '',
-  S: 's',
-  V: 'V',
-};
-
 /** How the trade writes the words that keys spell in lower case. */
 const TRADE_WORDS: readonly (readonly [RegExp, string])[] = [
   [/\bthd plus noise\b/, 'THD+N'],
@@ -38,11 +18,6 @@ export function figureLabel(key: string): string {
   const words = bare.replaceAll(/([A-Z])/g, (letter) => ` ${letter.toLowerCase()}`).trim();
   const text = TRADE_WORDS.reduce((soFar, [pattern, word]) => soFar.replace(pattern, word), words);
   return text.charAt(0).toUpperCase() + text.slice(1);
-}
-
-export function figureUnitText(key: string): string {
-  const unit = figureUnit(key);
-  return unit === null ? '' : UNIT_TEXT[unit];
 }
 
 /** Beyond these, digits say more about the arithmetic than about the unit. */

@@ -1,5 +1,6 @@
 import type { BenchRecord, ChannelResult, FigureLimit } from '@benchlark/dsp';
-import { figureLabel, figureText, figureUnitText, numberText } from './figure-words';
+import { unitWord } from '../records/unit-word';
+import { figureLabel, figureText, numberText } from './figure-words';
 
 /** Puts decimal points under each other whatever the length of the numbers. */
 function alignPoints(values: readonly string[]): string[] {
@@ -46,7 +47,7 @@ function figureLines(channel: ChannelResult): string[] {
       `  ${figureLabel(key)}`,
       values[index] ?? '',
       expanded[index] ?? '',
-      figureUnitText(key),
+      unitWord(key),
       worthText(key, channel.limits[key]),
     ]),
   );
@@ -69,7 +70,7 @@ function componentLines(channel: ChannelResult): string[] {
     channel.components.map((component) => [
       '  Line',
       ...Object.entries(component).map(([key, value]) =>
-        typeof value === 'number' ? `${value.toFixed(2)} ${figureUnitText(key)}` : String(value ?? '-'),
+        typeof value === 'number' ? `${value.toFixed(2)} ${unitWord(key)}` : String(value ?? '-'),
       ),
     ]),
   );
@@ -93,8 +94,7 @@ export function printRecord(record: BenchRecord): string {
     ...(channel.components.length > 0 ? componentLines(channel) : []),
   ]);
   const between = Object.entries(record.between.figures).map(
-    ([key, value]) =>
-      `  ${figureLabel(key)}  ${figureText(key, value, undefined).value} ${figureUnitText(key)}`,
+    ([key, value]) => `  ${figureLabel(key)}  ${figureText(key, value, undefined).value} ${unitWord(key)}`,
   );
   const warnings = record.warnings.map(
     ({ channel, message }) => `  ${channel ? `${channel}: ` : ''}${message}`,

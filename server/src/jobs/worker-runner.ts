@@ -69,6 +69,7 @@ export class WorkerRunner {
           this.#logger.log({ ...counts, msg: 'checked every stored object against its hash' });
         },
         'sweep-storage': async () => {
+          await this.sweep.forgetOldRows();
           const report = await this.sweep.sweep({ removesOrphans: this.env.SWEEP_REMOVES_ORPHANS });
           this.#logger.log({ ...report, orphans: report.orphans.length, msg: 'swept the storage' });
         },

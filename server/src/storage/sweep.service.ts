@@ -40,6 +40,17 @@ export class SweepService {
     return { removedTempFiles, orphans, removedOrphans };
   }
 
+  /**
+   * Forgets what has done its work: keys of uploads that nobody repeats any more, and counts of attempts that would begin
+   * anew anyway.
+   */
+  async forgetOldRows(): Promise<void> {
+    await this.dataSource.query(`DELETE FROM upload_key WHERE created_at < now() - interval '7 days'`);
+    await this.dataSource.query(
+      `DELETE FROM attempt WHERE updated_at < now() - interval '2 days' AND (blocked_until IS NULL OR blocked_until < now())`,
+    );
+  }
+
   /** Re-hashes every stored object, those longest unchecked first. */
   async checkAll(signal?: AbortSignal): Promise<{ sound: number; damaged: number; missing: number }> {
     const counts = { sound: 0, damaged: 0, missing: 0 };
