@@ -1,5 +1,6 @@
 import type { Check } from './check.js';
 import { levelChecks } from './level-checks.js';
+import { measureChecks } from './measure-checks.js';
 import { toneChecks } from './tone-checks.js';
 import { weightingChecks } from './weighting-checks.js';
 import { windowChecks } from './window-checks.js';
@@ -10,6 +11,7 @@ export const checksByTopic: Readonly<Record<string, readonly Check[]>> = {
   windows: windowChecks,
   weightings: weightingChecks,
   tones: toneChecks,
+  measures: measureChecks,
 };
 
 export const allChecks: readonly Check[] = Object.values(checksByTopic).flat();
