@@ -5,7 +5,7 @@ import { analyseSamples, numberOf, warningCodes } from '../testing/analyse-sampl
 import { dynamicRangeMeasure } from './dynamic-range-measure.js';
 
 describe('dynamic range of an ideal converter with triangular dither', () => {
-  // C-6.1 to C-6.4 of the measurement specification (computed from the dither's noise; AES17-2015, 6.4.1 for the figure).
+  // C-6.1 to C-6.4 (computed from the dither's noise; AES17-2015, 6.4.1 for the figure).
   it.each([
     { rate: 44100, bits: 16, flat: 93.75, a: 95.8, rms: 92.08 },
     { rate: 48000, bits: 16, flat: 94.12, a: 96.16, rms: 92.44 },
@@ -15,7 +15,7 @@ describe('dynamic range of an ideal converter with triangular dither', () => {
     const samples = quantise(sine(rate * 20, rate, 997, 1e-3), bits, createRandom(bits));
     const record = await analyseSamples(dynamicRangeMeasure, [samples], rate, { bits });
     const [left] = record.channels;
-    // 0.05 dB: the specification's tolerance for random noise (section 0.3).
+    // 0.05 dB: the tolerance for random noise (docs/record.md), five standard deviations of it here.
     expect(Math.abs(numberOf(left, 'dynamicRangeDb') - flat)).toBeLessThan(0.05);
     expect(Math.abs(numberOf(left, 'dynamicRangeAWeightedDb') - a)).toBeLessThan(0.06);
     expect(Math.abs(numberOf(left, 'dynamicRangeItu468RmsDb') - rms)).toBeLessThan(0.06);

@@ -8,7 +8,7 @@ const analyse = (samples: Float64Array, rate: number, options = {}) =>
   analyseSamples(toneMeasure, [samples], rate, options).then(({ channels }) => channels[0]);
 
 describe('tones anywhere', () => {
-  // Closed form: the tone is given. 0.001 dB is the specification's tolerance for noise-free signals (section 0.3).
+  // Closed form: the tone is given. 0.001 dB is the tolerance for signals without noise (docs/record.md).
   it.each([44100, 48000, 88200, 96000, 176400, 192000])(
     'reads 30 random tones at a rate of %i Hz',
     async (rate) => {
@@ -34,7 +34,7 @@ describe('tones anywhere', () => {
 });
 
 describe('harmonics', () => {
-  // C-4.2 of the measurement specification (closed form): H2 -100 dB, H3 -110.4576 dB, at any clock offset.
+  // C-4.2 (closed form): H2 -100 dB, H3 -110.4576 dB, at any clock offset.
   it.each([0, 10, 100, 200, -200])('reads them alike with the clock off by %i ppm', async (ppm) => {
     const f = 997 * (1 + ppm * 1e-6);
     const partials = [
@@ -108,7 +108,7 @@ describe('harmonics', () => {
 });
 
 describe('noise', () => {
-  // C-5.4 (simulated in the specification, expectation in closed form): -96.8866 dB, random noise tolerance 0.05 dB.
+  // C-5.4 (powers added, in closed form): -96.8866 dB, random noise tolerance 0.05 dB.
   it('adds to a harmonic as THD+N', async () => {
     const amplitude = 10 ** (-1 / 20);
     const rms = Math.SQRT1_2 * 1e-5;
