@@ -15,7 +15,7 @@ describe('dynamic range of an ideal converter with triangular dither', () => {
     const samples = quantise(sine(rate * 20, rate, 997, 1e-3), bits, createRandom(bits));
     const record = await analyseSamples(dynamicRangeMeasure, [samples], rate, { bits });
     const [left] = record.channels;
-    // 0.05 dB: the tolerance for random noise (docs/record.md), five standard deviations of it here.
+    // 0.05 dB: the tolerance for random noise (docs/record.md).
     expect(Math.abs(numberOf(left, 'dynamicRangeDb') - flat)).toBeLessThan(0.05);
     expect(Math.abs(numberOf(left, 'dynamicRangeAWeightedDb') - a)).toBeLessThan(0.06);
     expect(Math.abs(numberOf(left, 'dynamicRangeItu468RmsDb') - rms)).toBeLessThan(0.06);
