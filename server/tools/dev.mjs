@@ -15,6 +15,7 @@ async function main() {
     DATABASE_URL: databaseUrl,
     STORE_DIR: path.join(RUN_DIR, 'store'),
     DEMO: 'true',
+    LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn',
     // The page's address, so that links in mails and the origin check fit what the browser shows.
     PUBLIC_URL: 'http://127.0.0.1:4871',
   };
