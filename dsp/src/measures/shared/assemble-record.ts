@@ -2,6 +2,7 @@ import { DSP_VERSION } from '../../record/dsp-version.js';
 import {
   RECORD_SCHEMA,
   type BenchRecord,
+  type Between,
   type ChannelResult,
   type MeasureId,
   type RecordBody,
@@ -24,6 +25,10 @@ export interface RecordParts {
   readonly reference: RecordBody['reference'];
   readonly stimulus: StimulusMatch | null;
   readonly channels: readonly ChannelResult[];
+  /** What lies between channels, or is of the whole file; nothing unless given. */
+  readonly between?: Between;
+  /** A programme's parts. */
+  readonly segments?: readonly RecordBody[];
   readonly warnings: readonly Warning[];
 }
 
@@ -58,10 +63,10 @@ export function assembleRecord(
     reference: parts.reference,
     stimulus: parts.stimulus,
     channels: parts.channels,
-    between: { figures: {}, traces: {} },
+    between: parts.between ?? { figures: {}, traces: {} },
     findings: [],
     warnings: [...(context.fileWarnings ?? []), ...parts.warnings],
-    segments: [],
+    segments: parts.segments ?? [],
   };
 }
 

@@ -2,6 +2,7 @@ import { makeWarning } from '../../record/make-warning.js';
 import type { StimulusMatch, Warning } from '../../record/record.js';
 import type { SampleSource } from '../../source/sample-source.js';
 import { locateMarks, type MarkMatch } from '../../stimulus/locate-marks.js';
+import type { StimulusDescriptor } from '../../stimulus/descriptor.js';
 import { STIMULUS_KINDS } from '../../stimulus/stimulus-kinds.js';
 import type { AnalysisContext } from '../measure.js';
 import type { KnownPart } from './open-analysis.js';
@@ -17,6 +18,12 @@ export interface StimulusKnowledge {
   readonly part: KnownPart | null;
   readonly frequencyHz: number | null;
   readonly levelDbfs: number | null;
+  /** The file that was played: as its descriptor says, else as its marks name it; null where neither does. */
+  readonly file: StimulusDescriptor | null;
+  /** Whether the levels in `file` are those that were played: marks alone don't tell of a file scaled as a whole. */
+  readonly isLevelKnown: boolean;
+  /** The player's clock over the recorder's; 1 where it isn't known. */
+  readonly speed: number;
 }
 
 /** Filters of player and recorder ring on past a body's ramps for less than this. */
@@ -33,10 +40,11 @@ const SHORTEST_BODY_S = 0.2;
  */
 export async function gatherStimulus(
   source: SampleSource,
-  context: Pick<AnalysisContext, 'descriptor' | 'signal'>,
+  context: Pick<AnalysisContext, 'descriptor' | 'signal' | 'placed'>,
   assumedName: string,
   onShare: (share: number) => void = () => undefined,
 ): Promise<StimulusKnowledge> {
+  if (context.placed) return context.placed;
   const { descriptor = null, signal } = context;
   const marks = await locateMarks(source, { descriptor, signal, onProgress: onShare });
   const name = marks?.stimulusName ?? descriptor?.name ?? assumedName;
@@ -55,6 +63,9 @@ export async function gatherStimulus(
     frequencyHz: parameter('frequencyHz') ?? kind?.tone?.frequencyHz ?? null,
     levelDbfs:
       parameter('levelDbfs') ?? (kind?.isLevelNamed === true ? (kind.tone?.levelDbfs ?? null) : null),
+    file: descriptor,
+    isLevelKnown: descriptor !== null || kind?.isLevelNamed === true,
+    speed: 1 + (marks?.clockOffsetPpm ?? 0) * 1e-6,
   };
 }
 

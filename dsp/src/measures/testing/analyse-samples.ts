@@ -30,12 +30,13 @@ export function analyseSamples(
   measure: Measure,
   channels: readonly Float64Array[],
   sampleRateHz: number,
-  { bits = 'float', descriptor, fileWarnings, onProgress, signal, ...settings }: AnalyseOptions = {},
+  { bits = 'float', descriptor, placed, fileWarnings, onProgress, signal, ...settings }: AnalyseOptions = {},
 ): Promise<BenchRecord> {
   const capture = factsOf(channels, sampleRateHz, bits);
   return measure.analyse(openMemorySource(channels, sampleRateHz), settings, {
     capture,
     descriptor,
+    placed,
     fileWarnings,
     onProgress,
     signal,
