@@ -49,7 +49,13 @@ export * from './measures/analyse-capture.js';
 export * from './stimulus/create-stimulus.js';
 export * from './stimulus/parse-descriptor.js';
 export * from './stimulus/mark-codes.js';
-export { STIMULUS_NAMES } from './stimulus/stimulus-kinds.js';
+export {
+  STIMULUS_KINDS,
+  STIMULUS_NAMES,
+  type StimulusDefaults,
+  type StimulusKind,
+} from './stimulus/stimulus-kinds.js';
+export * from './stimulus/standard-descriptor.js';
 export {
   HIGHEST_STIMULUS_RATE_HZ,
   LOWEST_STIMULUS_RATE_HZ,

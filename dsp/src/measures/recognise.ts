@@ -2,7 +2,7 @@ import { DspInputError } from '../errors.js';
 import type { MeasureId } from '../record/record.js';
 import type { SampleSource } from '../source/sample-source.js';
 import { locateMarks } from '../stimulus/locate-marks.js';
-import { STIMULUS_KINDS } from '../stimulus/stimulus-kinds.js';
+import { findStimulusKind } from '../stimulus/stimulus-kinds.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import type { AnalysisContext } from './measure.js';
 import { measures } from './registry.js';
@@ -58,7 +58,7 @@ export async function recognise(
 }
 
 function measureOf(name: string, descriptor: StimulusDescriptor | null): MeasureId {
-  const kind = STIMULUS_KINDS.find((entry) => entry.name === name);
+  const kind = findStimulusKind(name);
   const id = kind?.measure ?? (descriptor?.name === name ? descriptor.parts[0]?.measure : undefined);
   if (id !== undefined && measures.some((measure) => measure.id === id)) return id;
   throw new DspInputError(

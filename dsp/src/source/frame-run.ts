@@ -1,5 +1,11 @@
 import { DspInputError } from '../errors.js';
 
+/** Frames of a source; `to` is the first one left out. */
+export interface FrameRun {
+  readonly from: number;
+  readonly to: number;
+}
+
 /**
  * Checks a request for frames and cuts it at the end of the source.
  *

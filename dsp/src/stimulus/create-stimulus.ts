@@ -2,15 +2,18 @@ import { dbToRatio } from '../level/decibel.js';
 import { lsbOf } from '../level/quantisation.js';
 import { countFramesInRun } from '../source/frame-run.js';
 import type { SampleSource } from '../source/sample-source.js';
-import { STIMULUS_SCHEMA, type StimulusDescriptor, type StimulusPart } from './descriptor.js';
+import type { WavOptions } from '../wav/create-wav-encoder.js';
+import { framesOf, RAMP_S, type Body, type BodyOptions } from './bodies/body.js';
+import { moveParts } from './bodies/programme-body.js';
+import { STIMULUS_SCHEMA, type StimulusDescriptor } from './descriptor.js';
 import { MARK_LEVEL_DBFS } from './mark-chirp.js';
-import { MARK_CODES, OTHER_PARAMETERS_CODE } from './mark-codes.js';
-import { renderSections, type Section, type ToneSection } from './sections.js';
+import { markCodeOf, OTHER_PARAMETERS_CODE } from './mark-codes.js';
+import { spanOfMark } from './sections/mark-section.js';
+import { moveSection, renderSections, type Section } from './sections/section.js';
 import {
   layOutStimulus,
   LEAD_IN_FREQUENCY_HZ,
   LEAD_IN_LEVEL_DBFS,
-  RAMP_S,
   type StimulusLayout,
 } from './stimulus-layout.js';
 import { resolveStimulusOptions, type ResolvedOptions, type StimulusOptions } from './stimulus-options.js';
@@ -18,20 +21,24 @@ import { resolveStimulusOptions, type ResolvedOptions, type StimulusOptions } fr
 export interface Stimulus {
   /** Two channels, rendered run by run; the writer of the file adds the dither. */
   readonly source: SampleSource;
+  /** How the file must be written: bits, dither and its seed, and what must stand in it without dither. */
+  readonly encoding: WavOptions;
   /** @param sha256 - hex, of the file's bytes */
   describe(sha256: string): StimulusDescriptor;
 }
 
+const PARAMETERS = ['frequencyHz', 'lowFrequencyHz', 'highFrequencyHz', 'levelDbfs', 'durationS'] as const;
+
 /** Gives the number for the marks' gaps; null when the file has no marks. */
 function codeOf(options: ResolvedOptions): number | null {
-  const { kind, tone, isBare, channels, durationS } = options;
+  const { kind, isBare, channels, sampleRateHz, isQuick } = options;
   if (isBare || kind.isDigitalZero) return null;
   const isDefault =
-    tone?.frequencyHz === kind.tone?.frequencyHz &&
-    durationS === kind.durationS &&
     channels === 'both' &&
-    (!kind.isLevelNamed || tone?.levelDbfs === kind.tone?.levelDbfs);
-  return (isDefault ? MARK_CODES.get(kind.name) : undefined) ?? OTHER_PARAMETERS_CODE;
+    PARAMETERS.every(
+      (key) => options[key] === (kind.defaults[key] ?? null) || (key === 'levelDbfs' && !kind.isLevelNamed),
+    );
+  return isDefault ? markCodeOf(kind.name, sampleRateHz, isQuick) : OTHER_PARAMETERS_CODE;
 }
 
 /** Keeps a full-scale tone off the ends of the scale: the largest code is 1 LSB short, and dither needs another. */
@@ -41,54 +48,55 @@ function limitAmplitude(amplitude: number, { bitsPerSample, dither }: ResolvedOp
   return Math.min(amplitude, 1 - marginLsb * lsbOf(bitsPerSample));
 }
 
-function listSections(options: ResolvedOptions, layout: StimulusLayout): Section[] {
-  const { sampleRateHz, tone } = options;
-  const rampFrames = Math.round(RAMP_S * sampleRateHz);
-  const amplitudeOf = (levelDbfs: number) =>
-    limitAmplitude(dbToRatio(Math.min(levelDbfs, options.ceilingDbfs ?? 0)), options);
-  const toneBetween = (fromS: number, toS: number, frequencyHz: number, levelDbfs: number): ToneSection => {
-    const fromFrame = Math.round(fromS * sampleRateHz);
-    const frameCount = Math.round(toS * sampleRateHz) - fromFrame;
-    return {
-      kind: 'tone',
-      fromFrame,
-      frameCount,
-      rampFrames,
-      frequencyHz,
-      amplitude: amplitudeOf(levelDbfs),
-    };
+function bodyOptionsOf(options: ResolvedOptions): BodyOptions {
+  const cap = (levelDbfs: number): number => Math.min(levelDbfs, options.ceilingDbfs ?? Infinity);
+  return {
+    ...options,
+    cap,
+    amplitudeOf: (levelDbfs) => limitAmplitude(dbToRatio(cap(levelDbfs)), options),
   };
+}
+
+function listSections(
+  { sampleRateHz }: ResolvedOptions,
+  { amplitudeOf }: BodyOptions,
+  body: Body,
+  layout: StimulusLayout,
+): Section[] {
   const sections: Section[] = layout.marks.map(({ atS }) => ({
     kind: 'mark',
+    channels: 'both',
+    ...spanOfMark(atS, sampleRateHz),
     atS,
     amplitude: amplitudeOf(MARK_LEVEL_DBFS),
   }));
   if (layout.leadInToS > 0) {
-    sections.push(toneBetween(0, layout.leadInToS, LEAD_IN_FREQUENCY_HZ, LEAD_IN_LEVEL_DBFS));
+    sections.push({
+      kind: 'tone',
+      channels: 'both',
+      fromFrame: 0,
+      originFrame: 0,
+      frameCount: framesOf(layout.leadInToS, sampleRateHz),
+      rampFrames: framesOf(RAMP_S, sampleRateHz),
+      frequencyHz: LEAD_IN_FREQUENCY_HZ,
+      phaseTurns: 0,
+      amplitude: amplitudeOf(LEAD_IN_LEVEL_DBFS),
+    });
   }
-  if (tone) sections.push(toneBetween(layout.bodyFromS, layout.bodyToS, tone.frequencyHz, tone.levelDbfs));
-  return sections;
+  return [...sections, ...body.sections.map((section) => moveSection(section, layout.bodyFromFrame))];
 }
 
-function describePart({ kind, tone, channels }: ResolvedOptions, layout: StimulusLayout): StimulusPart {
-  // The ramps belong to no part: a part is steady from its first frame to its last.
-  const rampS = tone ? RAMP_S : 0;
-  const fromS = layout.bodyFromS + rampS;
-  const toS = layout.bodyToS - rampS;
-  const steps = tone ? [{ levelDbfs: tone.levelDbfs, fromS, toS }] : [];
-  return { measure: kind.measure, channels, fromS, toS, parameters: { ...tone }, steps };
-}
-
-function createSource(options: ResolvedOptions, layout: StimulusLayout): SampleSource {
-  const { sampleRateHz, channels } = options;
-  const frameCount = Math.round(layout.durationS * sampleRateHz);
-  const sections = listSections(options, layout);
+function createSource(
+  { sampleRateHz, channels }: ResolvedOptions,
+  sections: readonly Section[],
+  frameCount: number,
+): SampleSource {
   const render = (fromFrame: number, wanted: number): Float64Array[] => {
     const count = countFramesInRun(frameCount, fromFrame, wanted);
-    const samples = renderSections(sections, sampleRateHz, fromFrame, count);
+    const [left, right] = renderSections(sections, sampleRateHz, fromFrame, count);
     return [
-      channels === 'right' ? new Float64Array(count) : samples,
-      channels === 'left' ? new Float64Array(count) : samples.slice(),
+      channels === 'right' ? new Float64Array(count) : left,
+      channels === 'left' ? new Float64Array(count) : right,
     ];
   };
   return {
@@ -96,6 +104,19 @@ function createSource(options: ResolvedOptions, layout: StimulusLayout): SampleS
     channelCount: 2,
     frameCount,
     read: (fromFrame, count) => Promise.resolve().then(() => render(fromFrame, count)),
+  };
+}
+
+function parametersOf(options: ResolvedOptions): Record<string, number | string> {
+  const set = PARAMETERS.flatMap((key): [string, number][] => {
+    const value = options[key];
+    return value === null ? [] : [[key, value]];
+  });
+  const { ceilingDbfs, isQuick, kind } = options;
+  return {
+    ...Object.fromEntries(set),
+    ...(ceilingDbfs === null ? {} : { ceilingDbfs }),
+    ...(kind.defaults.isQuick === undefined ? {} : { form: isQuick ? 'quick' : 'full' }),
   };
 }
 
@@ -107,30 +128,41 @@ function createSource(options: ResolvedOptions, layout: StimulusLayout): SampleS
  * @throws DspInputError `UNKNOWN_NAME`; `OUT_OF_RANGE` naming the parameter
  *
  * @example
- * const { source, describe } = createStimulus('sine', { sampleRateHz: 48_000, bitsPerSample: 24, isBare: true });
+ * const { source, encoding, describe } = createStimulus('sine', { sampleRateHz: 48_000, bitsPerSample: 24, isBare: true });
  * source.frameCount; // 480_000
+ * encodeWavBlocks(source, encoding); // the file's bytes
  */
 export function createStimulus(name: string, options: StimulusOptions): Stimulus {
   const resolved = resolveStimulusOptions(name, options);
-  const { kind, tone, durationS, ceilingDbfs, sampleRateHz, bitsPerSample, dither, seed, channels } =
-    resolved;
-  const layout = layOutStimulus(durationS, codeOf(resolved));
-  const source = createSource(resolved, layout);
+  const { kind, sampleRateHz, bitsPerSample, dither, seed, channels } = resolved;
+  const bodyOptions = bodyOptionsOf(resolved);
+  const body = kind.layOut(bodyOptions);
+  const layout = layOutStimulus(body.frameCount, sampleRateHz, codeOf(resolved));
+  const { bodyFromFrame, frameCount, marks } = layout;
   return {
-    source,
+    source: createSource(resolved, listSections(resolved, bodyOptions, body, layout), frameCount),
+    encoding: {
+      bits: bitsPerSample,
+      dither,
+      seed,
+      undithered: body.exact.map(({ from, to }) => ({ from: from + bodyFromFrame, to: to + bodyFromFrame })),
+    },
     describe: (sha256) => ({
       schema: STIMULUS_SCHEMA,
       name: kind.name,
-      parameters: { ...tone, durationS, ...(ceilingDbfs === null ? {} : { ceilingDbfs }) },
+      parameters: parametersOf(resolved),
       sampleRateHz,
       bitsPerSample,
       dither,
       seed,
       channels,
-      frameCount: source.frameCount,
+      frameCount,
       sha256,
-      marks: layout.marks,
-      parts: [describePart(resolved, layout)],
+      marks,
+      parts: moveParts(body.parts, bodyFromFrame / sampleRateHz).map((part) => ({
+        ...part,
+        channels: channels === 'both' ? part.channels : channels,
+      })),
     }),
   };
 }

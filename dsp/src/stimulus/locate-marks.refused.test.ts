@@ -103,7 +103,7 @@ describe('what holds no pair of marks', () => {
 
   it('one mark alone, and marks whose gap the table lacks', async () => {
     expect(await locate(marksAt([3]))).toBeNull();
-    expect(await locate(marksAt([3, 3.8]))).toBeNull();
+    expect(await locate(marksAt([3, 3.9]))).toBeNull();
     expect(await locate(marksAt([3, 3.315]))).toBeNull();
     expect(await locate(marksAt([3, 3.31]))).toMatchObject({ code: 1 });
   });

@@ -9,7 +9,8 @@ import { pairCandidates } from './marks/pair-candidates.js';
 import { solveTimes, type FileTimes, type MarkPair } from './marks/solve-times.js';
 import { findStrongestChannel } from './marks/strongest-channel.js';
 import { lookAtMark, verifyPairs } from './marks/verify-pairs.js';
-import { BESIDE_BODY_S, MARK_TO_BODY_S, RAMP_S } from './stimulus-layout.js';
+import { RAMP_S } from './bodies/body.js';
+import { BESIDE_BODY_S, MARK_TO_BODY_S } from './stimulus-layout.js';
 
 export interface LocateOptions {
   /** With it, files of other parameters give delay and clock as exactly as those of the table. */

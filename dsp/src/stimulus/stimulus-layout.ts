@@ -10,17 +10,13 @@ export const LEAD_IN_LEVEL_DBFS = -40;
 const BEFORE_MARKS_S = 0.1;
 /** Between marks and body, and after the last mark: lets a chain's ringing and a recorder's latency pass. */
 export const BESIDE_BODY_S = 0.25;
-/** A raised-cosine rise or fall inside each end of a steady part; its spectrum is 100 dB down 2 kHz away. */
-export const RAMP_S = 0.02;
 
 /** Where everything lies in a stimulus file, seconds from its first frame. */
 export interface StimulusLayout {
   readonly leadInToS: number;
   readonly marks: readonly StimulusMark[];
-  /** The body with its ramps. */
-  readonly bodyFromS: number;
-  readonly bodyToS: number;
-  readonly durationS: number;
+  readonly bodyFromFrame: number;
+  readonly frameCount: number;
 }
 
 /** From the beginning of a pair's second mark to the body, and from the body's end to a pair's first mark. */
@@ -29,18 +25,19 @@ export const MARK_TO_BODY_S = MARK_DURATION_S + BESIDE_BODY_S;
 /**
  * Lays a file out: lead-in, start pair, body, end pair.
  *
- * @param bodyS - duration of the body with its ramps
+ * @param bodyFrames - of the body with its ramps
  * @param code - the number in the marks' gaps; null for a bare file
  */
-export function layOutStimulus(bodyS: number, code: number | null): StimulusLayout {
-  if (code === null) {
-    return { leadInToS: 0, marks: [], bodyFromS: 0, bodyToS: bodyS, durationS: bodyS };
-  }
+export function layOutStimulus(
+  bodyFrames: number,
+  sampleRateHz: number,
+  code: number | null,
+): StimulusLayout {
+  if (code === null) return { leadInToS: 0, marks: [], bodyFromFrame: 0, frameCount: bodyFrames };
   const gapS = gapOfMarkCode(code);
   const startS = LEAD_IN_S + BEFORE_MARKS_S;
-  const bodyFromS = startS + gapS + MARK_TO_BODY_S;
-  const bodyToS = bodyFromS + bodyS;
-  const endS = bodyToS + BESIDE_BODY_S;
+  const bodyFromFrame = Math.round((startS + gapS + MARK_TO_BODY_S) * sampleRateHz);
+  const endS = (bodyFromFrame + bodyFrames) / sampleRateHz + BESIDE_BODY_S;
   return {
     leadInToS: LEAD_IN_S,
     marks: [
@@ -49,8 +46,7 @@ export function layOutStimulus(bodyS: number, code: number | null): StimulusLayo
       { kind: 'end', atS: endS },
       { kind: 'end', atS: endS + gapS },
     ],
-    bodyFromS,
-    bodyToS,
-    durationS: endS + gapS + MARK_TO_BODY_S,
+    bodyFromFrame,
+    frameCount: Math.round((endS + gapS + MARK_TO_BODY_S) * sampleRateHz),
   };
 }

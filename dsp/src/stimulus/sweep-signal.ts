@@ -37,16 +37,23 @@ export function planSweep(
 /**
  * Renders a run of a sweep of unit amplitude: sin(2π f₁ L e^(t/L)), faded in and out.
  *
- * @param fromS - time of the first sample, from the sweep's beginning; may be negative
+ * @param fromS - time of the sample with index 0, from the sweep's beginning; may be negative
  * @param stepS - time between samples
  * @param samples - filled; zero before the sweep's beginning and after its end
+ * @param firstIndex - index of the first sample: a run cut anywhere gives the same values
  */
-export function renderSweep(sweep: SweepSignal, fromS: number, stepS: number, samples: Float64Array): void {
+export function renderSweep(
+  sweep: SweepSignal,
+  fromS: number,
+  stepS: number,
+  samples: Float64Array,
+  firstIndex = 0,
+): void {
   const { lowHz, rateS, fadeInS, fadeOutS } = sweep;
   const durationS = sweepDurationS(sweep);
   const turnsAtStart = lowHz * rateS;
   for (let n = 0; n < samples.length; n++) {
-    const t = fromS + n * stepS;
+    const t = fromS + (firstIndex + n) * stepS;
     if (t < 0 || t > durationS) {
       samples[n] = 0;
       continue;

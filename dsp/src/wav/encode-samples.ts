@@ -2,6 +2,7 @@ import { DspInputError } from '../errors.js';
 import { createRandom, drawTriangular, type Random } from '../random/create-random.js';
 import { channelName } from '../source/channel-name.js';
 import { findNonFinite } from '../source/find-non-finite.js';
+import type { FrameRun } from '../source/frame-run.js';
 import type { StimulusBits } from '../stimulus/descriptor.js';
 import { viewOf } from './little-endian.js';
 
@@ -14,6 +15,8 @@ export interface SampleEncoding {
   readonly dither: WavDither;
   /** Whole number, 0 to 2^32 - 1; channel c draws from a generator of its own, seeded with seed + c. */
   readonly seed: number;
+  /** Runs of frames that are written as they stand, in order of time; the dither around them stays the same. */
+  readonly undithered?: readonly FrameRun[];
 }
 
 /** Turns blocks of samples into bytes, one after the other. */
@@ -57,7 +60,7 @@ function checkChannels(channels: readonly Float64Array[], channelCount: number):
  * @see Lipshitz, Wannamaker and Vanderkooy, "Quantization and Dither: A Theoretical Survey", JAES 40(5), 1992
  */
 export function createSampleEncoder(channelCount: number, encoding: SampleEncoding): SampleEncoder {
-  const { bits, dither, seed } = encoding;
+  const { bits, dither, seed, undithered = [] } = encoding;
   if (!Number.isInteger(seed) || seed < 0 || seed > 0xffffffff) {
     throw new DspInputError(
       'BAD_ARGUMENT',
@@ -71,22 +74,24 @@ export function createSampleEncoder(channelCount: number, encoding: SampleEncodi
     return dither === 'tpdf' ? () => drawTriangular(random) : () => 0;
   });
   let saturatedCount = 0;
+  let framesDone = 0;
 
-  const toCode = (sample: number, draw: Random): number => {
-    const code = Math.floor(sample * scale + draw() + 0.5);
+  const isExact = (frame: number): boolean => undithered.some(({ from, to }) => frame >= from && frame < to);
+  const toCode = (sample: number, dithering: number): number => {
+    const code = Math.floor(sample * scale + dithering + 0.5);
     if (code >= -scale && code < scale) {
       return code;
     }
     saturatedCount++;
     return code < 0 ? -scale : scale - 1;
   };
-  const put = (view: DataView, at: number, sample: number, draw: Random): void => {
+  const put = (view: DataView, at: number, sample: number, dithering: number): void => {
     if (bits === '32f') {
       view.setFloat32(at, sample, true);
     } else if (bits === 16) {
-      view.setInt16(at, toCode(sample, draw), true);
+      view.setInt16(at, toCode(sample, dithering), true);
     } else {
-      const code = toCode(sample, draw);
+      const code = toCode(sample, dithering);
       view.setUint16(at, code & 0xffff, true);
       view.setInt8(at + 2, code >> 16);
     }
@@ -104,9 +109,11 @@ export function createSampleEncoder(channelCount: number, encoding: SampleEncodi
       const view = viewOf(bytes);
       channels.forEach((samples, index) => {
         for (let n = 0, at = index * bytesPerSample; n < samples.length; n++, at += blockAlign) {
-          put(view, at, samples[n], draws[index]);
+          const drawn = draws[index]();
+          put(view, at, samples[n], undithered.length > 0 && isExact(framesDone + n) ? 0 : drawn);
         }
       });
+      framesDone += channels[0].length;
       return bytes;
     },
   };

@@ -3,7 +3,8 @@ import type { StimulusMatch, Warning } from '../../record/record.js';
 import type { SampleSource } from '../../source/sample-source.js';
 import { locateMarks, type MarkMatch } from '../../stimulus/locate-marks.js';
 import type { StimulusDescriptor } from '../../stimulus/descriptor.js';
-import { STIMULUS_KINDS } from '../../stimulus/stimulus-kinds.js';
+import { standardDescriptor } from '../../stimulus/standard-descriptor.js';
+import { findStimulusKind } from '../../stimulus/stimulus-kinds.js';
 import type { AnalysisContext } from '../measure.js';
 import type { KnownPart } from './open-analysis.js';
 
@@ -48,9 +49,11 @@ export async function gatherStimulus(
   const { descriptor = null, signal } = context;
   const marks = await locateMarks(source, { descriptor, signal, onProgress: onShare });
   const name = marks?.stimulusName ?? descriptor?.name ?? assumedName;
-  const kind = marks === null ? undefined : STIMULUS_KINDS.find((entry) => entry.name === marks.stimulusName);
+  const kind = marks === null ? null : findStimulusKind(marks.stimulusName);
+  const file = descriptor ?? (marks === null ? null : standardDescriptor(marks.code));
+  const isLevelKnown = descriptor !== null || kind?.isLevelNamed === true;
   const parameter = (key: string): number | null => {
-    const value = descriptor?.parameters[key];
+    const value = file?.parameters[key];
     return typeof value === 'number' && Number.isFinite(value) ? value : null;
   };
   return {
@@ -60,11 +63,10 @@ export async function gatherStimulus(
     clockOffsetPpm: marks?.clockOffsetPpm ?? null,
     polarity: marks?.polarity ?? null,
     part: marks === null ? null : settledBody(marks),
-    frequencyHz: parameter('frequencyHz') ?? kind?.tone?.frequencyHz ?? null,
-    levelDbfs:
-      parameter('levelDbfs') ?? (kind?.isLevelNamed === true ? (kind.tone?.levelDbfs ?? null) : null),
-    file: descriptor,
-    isLevelKnown: descriptor !== null || kind?.isLevelNamed === true,
+    frequencyHz: parameter('frequencyHz'),
+    levelDbfs: isLevelKnown ? parameter('levelDbfs') : null,
+    file,
+    isLevelKnown,
     speed: 1 + (marks?.clockOffsetPpm ?? 0) * 1e-6,
   };
 }

@@ -1,10 +1,10 @@
+import { RAMP_S } from '../bodies/body.js';
 import { MARK_DURATION_S, MARK_LEVEL_DBFS } from '../mark-chirp.js';
 import {
   BESIDE_BODY_S,
   LEAD_IN_FREQUENCY_HZ,
   LEAD_IN_LEVEL_DBFS,
   MARK_TO_BODY_S,
-  RAMP_S,
 } from '../stimulus-layout.js';
 import type { RefinedMark } from './refine-mark.js';
 

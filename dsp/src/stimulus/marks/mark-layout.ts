@@ -1,6 +1,6 @@
 import type { StimulusDescriptor } from '../descriptor.js';
-import { gapOfMarkCode, isMarkCode, nameOfMarkCode } from '../mark-codes.js';
-import { STIMULUS_KINDS } from '../stimulus-kinds.js';
+import { gapOfMarkCode, isMarkCode } from '../mark-codes.js';
+import { standardDescriptor } from '../standard-descriptor.js';
 import { layOutStimulus } from '../stimulus-layout.js';
 
 /** Where the marks lie in a file, from their code or from the file's descriptor; seconds from its first frame. */
@@ -13,17 +13,16 @@ export interface MarkLayout {
   readonly endS: number | null;
 }
 
-/** Any file with marks begins alike, however long its body is. */
-const ANY_BODY_S = 1;
+/** Any file with marks begins alike, however long its body is and whatever its rate. */
+const ANY = { bodyFrames: 48_000, sampleRateHz: 48_000 };
 /** Rounding of the seconds in a descriptor. */
 const SAME_GAP_S = 1e-6;
 
 /** Gives what a code alone tells. */
 export function layoutOfCode(code: number): MarkLayout {
-  const name = nameOfMarkCode(code);
-  const kind = STIMULUS_KINDS.find((entry) => entry.name === name);
-  const { marks } = layOutStimulus(kind?.durationS ?? ANY_BODY_S, code);
-  return { code, name, startS: marks[0].atS, endS: kind ? marks[2].atS : null };
+  const file = standardDescriptor(code);
+  const { marks } = file ?? layOutStimulus(ANY.bodyFrames, ANY.sampleRateHz, code);
+  return { code, name: file?.name ?? null, startS: marks[0].atS, endS: file ? marks[2].atS : null };
 }
 
 /** Gives what a descriptor tells; null when its file has no two pairs of marks with a gap of the table. */
