@@ -1,7 +1,29 @@
+import { measures, STIMULUS_NAMES } from '@benchlark/dsp';
+
+const WIDTH = 110;
+
+/** Names in lines that stand under each other. */
+function listNames(names: readonly string[], indent: number): string {
+  const lines = [''];
+  for (const name of names) {
+    const joined = lines[lines.length - 1] === '' ? name : `${lines[lines.length - 1]}, ${name}`;
+    if (indent + joined.length < WIDTH) lines[lines.length - 1] = joined;
+    else {
+      lines[lines.length - 1] += ',';
+      lines.push(name);
+    }
+  }
+  return lines.join(`\n${' '.repeat(indent)}`);
+}
+
 export const HELP = `Benchlark's command line
 
   analyse FILE.wav     measure a recording
-      --measure NAME         tone, idle, dynamic-range; without it the program says what it took the file for
+      --measure NAME         without it the program says what it took the file for
+                             ${listNames(
+                               measures.map(({ id }) => id),
+                               29,
+                             )}
       --stimulus FILE.json   the descriptor of the stimulus that was played
       --band LOW:HIGH        Hz (20:20000)
       --from S  --to S       the part to measure, seconds
@@ -14,9 +36,10 @@ export const HELP = `Benchlark's command line
   verify RECORD.json FILE.wav
                        compute a record again and name the figures that differ
   stimulus NAME --rate HZ --out FILE.wav
-                       write a test signal (sine, low-level-tone, silence) and its descriptor
-      --bits 16|24|32f  --level DBFS  --ceiling DBFS  --frequency HZ  --duration S
-      --channels both|left|right  --dither tpdf|none  --seed N  --bare
+                       write a test signal and its descriptor:
+                       ${listNames(STIMULUS_NAMES, 23)}
+      --bits 16|24|32f  --level DBFS  --ceiling DBFS  --frequency HZ  --low HZ --high HZ (pairs)  --duration S
+      --channels both|left|right  --dither tpdf|none  --seed N  --bare  --quick (the programme in 30 s)
   practice IN.wav OUT.wav --device FILE.json|NAME
                        pass a recording through a practice device
   upload FILE.wav... --to URL --token T

@@ -13,6 +13,8 @@ const OPTIONS = {
   rate: { type: 'string' },
   bits: { type: 'string' },
   frequency: { type: 'string' },
+  low: { type: 'string' },
+  high: { type: 'string' },
   level: { type: 'string' },
   ceiling: { type: 'string' },
   duration: { type: 'string' },
@@ -20,6 +22,7 @@ const OPTIONS = {
   dither: { type: 'string' },
   seed: { type: 'string' },
   bare: { type: 'boolean' },
+  quick: { type: 'boolean' },
   out: { type: 'string' },
 } as const;
 
@@ -64,6 +67,8 @@ export async function runStimulus(args: readonly string[], io: CliIo): Promise<v
     sampleRateHz,
     bitsPerSample: bits,
     frequencyHz: readNumber(command, 'frequency'),
+    lowFrequencyHz: readNumber(command, 'low'),
+    highFrequencyHz: readNumber(command, 'high'),
     levelDbfs: readNumber(command, 'level'),
     ceilingDbfs: readNumber(command, 'ceiling'),
     durationS: readNumber(command, 'duration'),
@@ -71,12 +76,12 @@ export async function runStimulus(args: readonly string[], io: CliIo): Promise<v
     dither: readChoice(command, 'dither', ['tpdf', 'none']),
     seed: readNumber(command, 'seed'),
     isBare: command.values['bare'] === true,
+    isQuick: command.values['quick'] === true,
   });
-  const { dither, seed } = stimulus.describe('');
   const file = path.resolve(io.cwd, out);
   const descriptorFile = file.replace(/\.wav$/, '.json');
   await namingFile(out, async () => {
-    const sha256 = await writeHashed(file, encodeWavBlocks(stimulus.source, { bits, dither, seed }));
+    const sha256 = await writeHashed(file, encodeWavBlocks(stimulus.source, stimulus.encoding));
     await writeFile(descriptorFile, `${JSON.stringify(stimulus.describe(sha256), null, 2)}\n`);
   });
   io.out(`${out} and ${path.basename(descriptorFile)} written\n`);

@@ -1,10 +1,4 @@
-import {
-  applyDevice,
-  createStimulus,
-  encodeWavBlocks,
-  openMemorySource,
-  type StimulusDescriptor,
-} from '@benchlark/dsp';
+import { applyDevice, createStimulus, encodeWavBlocks, openMemorySource } from '@benchlark/dsp';
 import type { DemoTake } from './scenario';
 
 /** Where a plain fmt chunk leaves the size of the data: after RIFF and WAVE, fmt with 16 bytes, and the word "data". */
@@ -30,11 +24,10 @@ export async function* makeRecording(take: DemoTake): AsyncIterable<Uint8Array> 
   const { frameCount } = stimulus.source;
   const played = await stimulus.source.read(0, frameCount);
   const recorded = applyDevice(played, sampleRateHz, { ...device, sampleRateHz });
-  const { seed }: StimulusDescriptor = stimulus.describe('');
   const blocks = encodeWavBlocks(openMemorySource(recorded, sampleRateHz), {
     bits,
     dither: 'tpdf',
-    seed: seed + device.seed,
+    seed: stimulus.encoding.seed + device.seed,
   });
   yield* take.isCutOff ? withoutDataSize(blocks) : blocks;
 }
