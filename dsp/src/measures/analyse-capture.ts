@@ -1,4 +1,5 @@
 import type { BenchRecord, MeasureId } from '../record/record.js';
+import type { MarkMatch } from '../stimulus/locate-marks.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import { captureFactsOf, type WavFile } from '../wav/wav-file.js';
 import type { AnalysisContext, AnalysisSettings } from './measure.js';
@@ -36,11 +37,12 @@ export async function analyseCapture(
   { measure, settings = {}, descriptor = null }: CaptureRequest,
   { onProgress, signal }: Pick<AnalysisContext, 'onProgress' | 'signal'> = {},
 ): Promise<CaptureAnalysis> {
-  const run = (id: MeasureId, done: number): Promise<BenchRecord> =>
+  const run = (id: MeasureId, done: number, marks?: MarkMatch | null): Promise<BenchRecord> =>
     getMeasure(id).analyse(wav, settings, {
       capture: captureFactsOf(wav, sha256),
       fileWarnings: wav.warnings,
       descriptor,
+      marks,
       signal,
       onProgress: (share) => onProgress?.(done + share * (1 - done)),
     });
@@ -50,5 +52,5 @@ export async function analyseCapture(
     signal,
     onProgress: (share) => onProgress?.(share * RECOGNITION_SHARE),
   });
-  return { record: await run(recognition.measure, RECOGNITION_SHARE), recognition };
+  return { record: await run(recognition.measure, RECOGNITION_SHARE, recognition.marks), recognition };
 }

@@ -1,6 +1,7 @@
 import type { BenchRecord, Calibration, MeasureId, Warning } from '../record/record.js';
 import type { CaptureFacts, SampleSource } from '../source/sample-source.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
+import type { MarkMatch } from '../stimulus/locate-marks.js';
 import type { AlignedStimulus } from './shared/align-stimulus.js';
 
 /** What a person may ask for; what is left out takes the measure's default and stands in the record's settings. */
@@ -22,6 +23,8 @@ export interface AnalysisContext {
   readonly descriptor?: StimulusDescriptor | null;
   /** Where everything lies, for a part of a programme that is placed already: nobody looks for marks then. */
   readonly placed?: AlignedStimulus | null;
+  /** The marks in the capture, when somebody has looked for them already; null where there are none. */
+  readonly marks?: MarkMatch | null;
   /** Told the share of the work done, 0 to 1, never falling. */
   readonly onProgress?: (share: number) => void;
   /** Looked at between blocks; once aborted, the analysis throws `CANCELLED`. */

@@ -1,7 +1,7 @@
 import { DspInputError } from '../errors.js';
 import type { MeasureId } from '../record/record.js';
 import type { SampleSource } from '../source/sample-source.js';
-import { locateMarks } from '../stimulus/locate-marks.js';
+import { locateMarks, type MarkMatch } from '../stimulus/locate-marks.js';
 import { findStimulusKind } from '../stimulus/stimulus-kinds.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import type { AnalysisContext } from './measure.js';
@@ -15,6 +15,8 @@ export interface Recognition {
   readonly why: string;
   /** null where the signal alone told the kind. */
   readonly stimulusName: string | null;
+  /** Those found in the recording, so that the measure needn't look for them again. */
+  readonly marks: MarkMatch | null;
 }
 
 export interface RecognitionOptions extends Pick<AnalysisContext, 'onProgress' | 'signal'> {
@@ -48,13 +50,14 @@ export async function recognise(
       measure: measureOf(name, descriptor),
       why: `${where} the stimulus "${name}"`,
       stimulusName: name,
+      marks,
     };
   }
   const bySignal = await recogniseSignal(source, {
     signal,
     onProgress: (share) => onProgress?.(MARKS_SHARE + share * (1 - MARKS_SHARE)),
   });
-  return { ...bySignal, stimulusName: null };
+  return { ...bySignal, stimulusName: null, marks };
 }
 
 function measureOf(name: string, descriptor: StimulusDescriptor | null): MeasureId {

@@ -2,10 +2,13 @@ import { DspInputError } from '../errors.js';
 import { dynamicRangeMeasure } from './dynamic-range/dynamic-range-measure.js';
 import { idleMeasure } from './idle/idle-measure.js';
 import type { Measure } from './measure.js';
+import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { toneMeasure } from './tone/tone-measure.js';
 
+const singleMeasures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure];
+
 /** Every measure there is. Command line, worker, server and pages find theirs here. */
-export const measures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure];
+export const measures: readonly Measure[] = [...singleMeasures, createProgrammeMeasure(singleMeasures)];
 
 /**
  * Finds a measure by its id.

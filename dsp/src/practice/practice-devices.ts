@@ -21,11 +21,34 @@ function build(
   };
 }
 
+/**
+ * A converter whose bass falls below 31 Hz and whose noise hides what lies under about -100 dBFS, as inexpensive ones have
+ * it (common practice, no source).
+ */
+const PLAIN_CONVERTER: readonly PracticeStage[] = [
+  { kind: 'filter', channel: 'both', type: 'high-pass', frequencyHz: 9, order: 1 },
+  { kind: 'noise', channel: 'both', levelDbfs: -97 },
+];
+
 /** Invented devices to practise on, by the name that a person types. */
 export const PRACTICE_DEVICES: Readonly<Record<string, PracticeDevice>> = {
   clean: build('a unit without a fault', 101, [
     { kind: 'gain', channel: 'both', gainDb: -1.5 },
     { kind: 'polynomial', channel: 'both', coefficients: [1, 4e-6, 2e-6] },
+  ]),
+  'plain-converter': build('an inexpensive converter without a fault', 107, [...PLAIN_CONVERTER]),
+  'pinched-converter': build(
+    'the same converter, its output held at 0.763 on one half of the left channel',
+    108,
+    [...PLAIN_CONVERTER, { kind: 'clip', channel: 'left', positive: 0.763, negative: 2 }],
+  ),
+  'yielding-converter': build(
+    'the same converter, its output giving way softly on one half of the left channel',
+    109,
+    [...PLAIN_CONVERTER, { kind: 'soft-clip', channel: 'left', positive: 0.8, negative: 2, kneeDb: 2 }],
+  ),
+  'mended-converter': build('the same converter after its output stage was mended', 110, [
+    ...PLAIN_CONVERTER,
   ]),
   'humming-headphone-amplifier': build('a headphone amplifier with hum on its right channel', 102, [
     { kind: 'gain', channel: 'both', gainDb: -2 },

@@ -81,6 +81,12 @@ export const WARNING_SENTENCES = {
   'stimulus-mismatch':
     'The descriptor says {declared}, and the recording holds {found}: it was measured as it is.',
   'recording-cut': 'The recording {where}: what is there was measured.',
+  'segment-missing': 'The programme’s part {name} is not in the recording: it has no figures.',
+  'segment-cut':
+    'The recording holds the programme’s part {name} only from {from} to {to} s: what is there was measured.',
+  'segment-not-measured': 'The programme’s part {name} could not be measured: {reason}.',
+  'timeline-broken':
+    'Samples were lost or doubled in the recording {where}: the parts were found one by one, and what falls on the break is not to be trusted.',
   'stimulus-assumed':
     'The recording has neither marks nor a descriptor: it was measured as a {name}, with levels relative to the loudest part.',
 } as const;

@@ -1,7 +1,7 @@
 import { DspInputError } from '../../errors.js';
 import { meanSquareToDbfs, ratioToDb } from '../../level/decibel.js';
 import { makeWarning } from '../../record/make-warning.js';
-import type { BenchRecord, Figures, Warning } from '../../record/record.js';
+import type { BenchRecord, Figures, StimulusMatch, Warning } from '../../record/record.js';
 import type { SampleSource } from '../../source/sample-source.js';
 import type { AnalysisContext, AnalysisSettings, Measure } from '../measure.js';
 import { assembleRecord } from '../shared/assemble-record.js';
@@ -15,6 +15,7 @@ import { selectByName, settleSegment } from '../shared/open-analysis.js';
 import { planFrames } from '../shared/plan-frames.js';
 import { createProgress } from '../shared/progress.js';
 import { quantisationFloor } from '../shared/quantisation-floor.js';
+import { stimulusMatch } from '../shared/scan-tones.js';
 import { scanSegment, type ChannelScan } from '../shared/scan-segment.js';
 import {
   settleBand,
@@ -56,7 +57,14 @@ async function analyseIdle(
   const highestHarmonic = settleHighestHarmonic(settings);
   const band = settleBand(settings, source.sampleRateHz, null);
   const selected = selectByName(source, settings);
-  const range = await settleSegment(selected.source, settings, null, true, context, progress);
+  const range = await settleSegment(
+    selected.source,
+    settings,
+    context.placed?.part ?? null,
+    true,
+    context,
+    progress,
+  );
   const plan = planFrames(range.to - range.from);
   const options = { plan, windowName: WINDOW, searches: selected.names.map(() => null) } as const;
   const scans = await scanSegment(selected.source, selected.names, range, options, context, progress);
@@ -83,14 +91,7 @@ async function analyseIdle(
     bandHighHz: band.highHz,
     highestHarmonic,
     reference: { unitFullScaleDbfs: null, from: null },
-    // Silence has no marks: only a descriptor can name it.
-    stimulus: {
-      name: context.descriptor?.name ?? 'silence',
-      recognisedBy: context.descriptor ? 'descriptor' : 'signal',
-      delayS: null,
-      clockOffsetPpm: null,
-      polarity: null,
-    },
+    stimulus: silenceMatch(context),
     channels: finished.map(({ result }) => result),
     warnings: [
       ...band.warnings,
@@ -100,6 +101,18 @@ async function analyseIdle(
       ...finished.flatMap(({ warnings }) => warnings),
     ],
   });
+}
+
+/** Silence has no marks of its own: only a descriptor or a programme can name it. */
+function silenceMatch({ descriptor, placed }: AnalysisContext): StimulusMatch {
+  if (placed) return stimulusMatch(placed, null);
+  return {
+    name: descriptor?.name ?? 'silence',
+    recognisedBy: descriptor ? 'descriptor' : 'signal',
+    delayS: null,
+    clockOffsetPpm: null,
+    polarity: null,
+  };
 }
 
 function finishIdle(

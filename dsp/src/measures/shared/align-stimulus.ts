@@ -46,7 +46,7 @@ const WHOLE_TOLERANCE_S = 0.002;
  */
 export async function alignStimulus(
   source: SampleSource,
-  context: Pick<AnalysisContext, 'descriptor' | 'signal' | 'placed'>,
+  context: Pick<AnalysisContext, 'descriptor' | 'signal' | 'placed' | 'marks'>,
   { measure, assumedName }: { readonly measure: MeasureId; readonly assumedName: string },
   onShare: (share: number) => void = () => undefined,
 ): Promise<AlignedStimulus> {

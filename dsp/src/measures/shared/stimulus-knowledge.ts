@@ -34,20 +34,23 @@ const SHORTEST_BODY_S = 0.2;
 /**
  * Gathers what marks and descriptor say of the stimulus.
  *
- * @param source - the capture whole; read once from end to end
+ * @param source - the capture whole; read once from end to end, unless the marks are known
  * @param assumedName - what the measure takes the recording for when nothing says
  * @returns frequency and level where they are known: the marks name a kind with its default parameters, but the level only of
  *   kinds whose figures rest on it (others may have been scaled as a whole)
  */
 export async function gatherStimulus(
   source: SampleSource,
-  context: Pick<AnalysisContext, 'descriptor' | 'signal' | 'placed'>,
+  context: Pick<AnalysisContext, 'descriptor' | 'signal' | 'placed' | 'marks'>,
   assumedName: string,
   onShare: (share: number) => void = () => undefined,
 ): Promise<StimulusKnowledge> {
   if (context.placed) return context.placed;
   const { descriptor = null, signal } = context;
-  const marks = await locateMarks(source, { descriptor, signal, onProgress: onShare });
+  const marks =
+    context.marks !== undefined
+      ? context.marks
+      : await locateMarks(source, { descriptor, signal, onProgress: onShare });
   const name = marks?.stimulusName ?? descriptor?.name ?? assumedName;
   const kind = marks === null ? null : findStimulusKind(marks.stimulusName);
   const file = descriptor ?? (marks === null ? null : standardDescriptor(marks.code));
@@ -81,9 +84,10 @@ function settledBody({ bodyFromS, bodyToS }: MarkMatch): KnownPart | null {
 /** What the capture as a whole lacks of the stimulus; nothing where neither marks nor a descriptor tell. */
 export function cutWarnings(
   { delayS }: StimulusKnowledge,
-  { capture, descriptor }: Pick<AnalysisContext, 'capture' | 'descriptor'>,
+  { capture, descriptor, placed }: Pick<AnalysisContext, 'capture' | 'descriptor' | 'placed'>,
 ): Warning[] {
-  if (delayS === null) return [];
+  // A programme tells of its parts one by one.
+  if (delayS === null || placed) return [];
   const warnings: Warning[] = [];
   if (delayS < 0)
     warnings.push(
