@@ -1,11 +1,12 @@
 import { DspInputError } from '../errors.js';
 import { dynamicRangeMeasure } from './dynamic-range/dynamic-range-measure.js';
 import { idleMeasure } from './idle/idle-measure.js';
+import { levelStepsMeasure } from './level-steps/level-steps-measure.js';
 import type { Measure } from './measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { toneMeasure } from './tone/tone-measure.js';
 
-const singleMeasures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure];
+const singleMeasures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure, levelStepsMeasure];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */
 export const measures: readonly Measure[] = [...singleMeasures, createProgrammeMeasure(singleMeasures)];

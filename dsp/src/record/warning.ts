@@ -85,6 +85,12 @@ export const WARNING_SENTENCES = {
   'segment-cut':
     'The recording holds the programme’s part {name} only from {from} to {to} s: what is there was measured.',
   'segment-not-measured': 'The programme’s part {name} could not be measured: {reason}.',
+  'steps-missing':
+    'The recording lacks the steps at {levels} dBFS: it began after them or ended before. The others were measured.',
+  'steps-in-noise':
+    'Below {level} dBFS the steps of the channel {channel} are lost in its noise: they are left out.',
+  'no-reference-step':
+    'The steps hold none near -20 dBFS: deviation is against the step at {level} dBFS.',
   'timeline-broken':
     'Samples were lost or doubled in the recording {where}: the parts were found one by one, and what falls on the break is not to be trusted.',
   'stimulus-assumed':

@@ -65,9 +65,8 @@ export async function measureProgramme(folder) {
   for (const { name, measure } of STIMULUS_KINDS) {
     if (measure === 'programme') continue;
     await make(name);
-    alone.push({ stimulus: name, measure, ...row(name, await repeat(() => analyse(fileOf(name), measure))) });
+    alone.push(row(`${measure} (${name})`, await repeat(() => analyse(fileOf(name), measure))));
   }
-  const shown = alone.map(({ process: _process, ...rest }) => rest);
-  printTable('Each measure alone on its stimulus, 96 kHz, 24 bit, stereo: whole process', shown);
-  return { rows, alone: shown };
+  printTable('Each measure alone on its stimulus, 96 kHz, 24 bit, stereo: whole process', alone);
+  return { rows, alone };
 }

@@ -1,6 +1,8 @@
 import { makeWarning } from '../../record/make-warning.js';
 import type { Warning } from '../../record/record.js';
 import type { CaptureFacts } from '../../source/sample-source.js';
+import type { LevelReading } from '../../level/create-level-meter.js';
+import type { ToneTrack } from './tone-tracker.js';
 import type { ChannelScan } from './scan-segment.js';
 import { shortLevel, shortNumber } from './settings-band.js';
 
@@ -17,7 +19,10 @@ const LONGER_SAMPLES = 2;
  * A low tone at exactly full scale rests on the end code for several samples by rounding alone: its top is within one
  * step of the end for 2 arccos(1 - step) of its period.
  */
-export function isOverloaded(scan: ChannelScan, capture: CaptureFacts): boolean {
+export function isOverloaded(
+  scan: { readonly level: LevelReading; readonly tone: Pick<ToneTrack, 'frequencyHz'> | null },
+  capture: CaptureFacts,
+): boolean {
   const { clippedRunCount, longestEndCodeRun } = scan.level;
   if (clippedRunCount === 0) return false;
   if (scan.tone === null) return true;

@@ -37,7 +37,7 @@ export interface Distortion {
  */
 export function takeApart(
   spectrum: PowerSpectrum,
-  track: ToneTrack,
+  track: Pick<ToneTrack, 'frequencyHz' | 'harmonics'>,
   band: Pick<Band, 'lowHz' | 'highHz'>,
   highestHarmonic: number,
 ): Distortion {
@@ -99,9 +99,9 @@ function harmonicOf(
   lobe: Lobe,
   isThere: boolean,
   fundamental: number,
-  track: ToneTrack,
+  track: Pick<ToneTrack, 'frequencyHz' | 'harmonics'>,
 ): Harmonic {
-  const { re, im } = track.harmonics[order] ?? { re: 0, im: 0 };
+  const { re, im } = track.harmonics.at(order) ?? { re: 0, im: 0 };
   const degrees = (Math.atan2(im, re) * 180) / Math.PI;
   return {
     order,
