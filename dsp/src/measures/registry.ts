@@ -4,9 +4,18 @@ import { idleMeasure } from './idle/idle-measure.js';
 import { levelStepsMeasure } from './level-steps/level-steps-measure.js';
 import type { Measure } from './measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
+import { twoToneMeasure } from './two-tone/two-tone-measure.js';
+import { twoToneStepsMeasure } from './two-tone-steps/two-tone-steps-measure.js';
 import { toneMeasure } from './tone/tone-measure.js';
 
-const singleMeasures: readonly Measure[] = [toneMeasure, idleMeasure, dynamicRangeMeasure, levelStepsMeasure];
+const singleMeasures: readonly Measure[] = [
+  toneMeasure,
+  idleMeasure,
+  dynamicRangeMeasure,
+  twoToneMeasure,
+  twoToneStepsMeasure,
+  levelStepsMeasure,
+];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */
 export const measures: readonly Measure[] = [...singleMeasures, createProgrammeMeasure(singleMeasures)];

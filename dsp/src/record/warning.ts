@@ -64,6 +64,10 @@ export const WARNING_SENTENCES = {
     'Mains hum makes up more than half of what is left beside the tone ({level} dBFS at multiples of {frequency} Hz): look to the ground connections first.',
   'hum-on-harmonic':
     'The tone’s line or a harmonic falls on a multiple of {frequency} Hz mains: hum and distortion can’t be told apart there. Use another frequency.',
+  'products-in-noise':
+    'The products of the two tones in the channel {channel} stand in its noise: their figures are only bounds.',
+  'step-products-in-noise':
+    'At some levels the products in the channel {channel} stand in its noise, {below} dB down at the loudest step: they are left out there.',
   'no-hum': 'No line of 50 or 60 Hz mains or its multiples stands out of the noise.',
   'hum-unresolved':
     'The segment of {duration} s is too short to tell mains hum from noise: record at least {wanted} s.',
@@ -89,8 +93,7 @@ export const WARNING_SENTENCES = {
     'The recording lacks the steps at {levels} dBFS: it began after them or ended before. The others were measured.',
   'steps-in-noise':
     'Below {level} dBFS the steps of the channel {channel} are lost in its noise: they are left out.',
-  'no-reference-step':
-    'The steps hold none near -20 dBFS: deviation is against the step at {level} dBFS.',
+  'no-reference-step': 'The steps hold none near -20 dBFS: deviation is against the step at {level} dBFS.',
   'timeline-broken':
     'Samples were lost or doubled in the recording {where}: the parts were found one by one, and what falls on the break is not to be trusted.',
   'stimulus-assumed':

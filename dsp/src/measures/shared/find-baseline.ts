@@ -30,13 +30,17 @@ const SAME_RANGE_SHARE = 0.02;
  * @returns its figures by channel, or why it doesn't apply
  */
 export function matchBaseline(baseline: BenchRecord, conditions: BaselineConditions): BaselineMatch {
-  const body = [baseline, ...baseline.segments].find(({ measure }) => measure === conditions.measure);
-  const reason =
-    body === undefined ? `it holds no measure "${conditions.measure}"` : mismatch(baseline, body, conditions);
-  if (body === undefined || reason !== null) return { isApplicable: false, reason: reason ?? '' };
+  const reasons = [baseline, ...baseline.segments]
+    .filter(({ measure }) => measure === conditions.measure)
+    .map((body) => ({ body, reason: mismatch(baseline, body, conditions) }));
+  const fitting = reasons.find(({ reason }) => reason === null);
+  if (fitting === undefined) {
+    const reason = reasons.at(0)?.reason ?? `it holds no measure "${conditions.measure}"`;
+    return { isApplicable: false, reason };
+  }
   return {
     isApplicable: true,
-    channels: new Map(body.channels.map(({ channel, figures }) => [channel, figures])),
+    channels: new Map(fitting.body.channels.map(({ channel, figures }) => [channel, figures])),
   };
 }
 
@@ -50,7 +54,7 @@ function mismatch(baseline: BenchRecord, body: RecordBody, conditions: BaselineC
   }
   if (isOtherRange(body.settings.calibration, conditions.calibration))
     return 'it was taken with the recorder in another range';
-  const level = toneFigure(body, 'fundamentalLevelDbfs');
+  const level = toneFigure(body, ['fundamentalLevelDbfs', 'highToneLevelDbfs']);
   if (
     level !== null &&
     conditions.levelDbfs !== null &&
@@ -58,7 +62,7 @@ function mismatch(baseline: BenchRecord, body: RecordBody, conditions: BaselineC
   ) {
     return `its tone lay at ${level.toFixed(1)} dBFS, and this one lies at ${conditions.levelDbfs.toFixed(1)} dBFS`;
   }
-  const frequency = toneFigure(body, 'fundamentalFrequencyHz');
+  const frequency = toneFigure(body, ['fundamentalFrequencyHz', 'highToneFrequencyHz']);
   if (
     frequency !== null &&
     conditions.frequencyHz !== null &&
@@ -77,7 +81,8 @@ function isOtherRange(one: Calibration | null, other: Calibration | null): boole
   });
 }
 
-function toneFigure(body: RecordBody, key: string): number | null {
-  const value = body.channels.map(({ figures }) => figures[key]).find((figure) => typeof figure === 'number');
-  return typeof value === 'number' ? value : null;
+/** The first of some figures that any channel has: what tells the tone of this measure. */
+function toneFigure(body: RecordBody, keys: readonly string[]): number | null {
+  const values = body.channels.flatMap(({ figures }) => keys.map((key) => figures[key]));
+  return values.find((value) => typeof value === 'number') ?? null;
 }

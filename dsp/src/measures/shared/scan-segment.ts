@@ -21,6 +21,8 @@ export interface ChannelScan {
   readonly constant: number;
   /** null where no tone was looked for or found. */
   readonly tone: ToneTrack | null;
+  /** The low tone of a pair. */
+  readonly lowTone: ToneTrack | null;
 }
 
 export interface ScanOptions {
@@ -28,6 +30,8 @@ export interface ScanOptions {
   readonly windowName: WindowName;
   /** Where to look for each channel's tone; null where there is none. */
   readonly searches: readonly (ToneSearch | null)[];
+  /** Where to look for each channel's low tone, of a pair; none without. */
+  readonly lowSearches?: readonly (ToneSearch | null)[];
 }
 
 /**
@@ -47,13 +51,19 @@ export async function scanSegment(
   const kit = createSpectrumKit(source.sampleRateHz, options.plan, options.windowName);
   const { sampleFormat, bitsPerSample } = context.capture;
   const meters = names.map((_, index) => {
-    const search = options.searches[index] ?? null;
-    const tracker = search === null ? null : createToneTracker(kit, search);
+    const trackerOf = (search: ToneSearch | null | undefined) =>
+      search === null || search === undefined ? null : createToneTracker(kit, search);
+    const tracker = trackerOf(options.searches[index]);
+    const lowTracker = trackerOf(options.lowSearches?.[index]);
     return {
       tracker,
+      lowTracker,
       level: createLevelMeter(sampleFormat === 'integer' ? { integerBits: bitsPerSample } : {}),
       truePeak: createTruePeakMeter(source.sampleRateHz),
-      spectrum: createSpectrumAccumulator(kit, (spectrum, start) => tracker?.onSpectrum(spectrum, start)),
+      spectrum: createSpectrumAccumulator(kit, (spectrum, start) => {
+        tracker?.onSpectrum(spectrum, start);
+        lowTracker?.onSpectrum(spectrum, start);
+      }),
     };
   });
   let at = 0;
@@ -67,12 +77,13 @@ export async function scanSegment(
     at += channels[0].length;
   };
   await streamFrames(source, range, context, push, onShare);
-  return meters.map(({ tracker, level, truePeak, spectrum }, index) => ({
+  return meters.map(({ tracker, lowTracker, level, truePeak, spectrum }, index) => ({
     channel: names[index],
     level: level.read(),
     // Faded ends must not hide a sample that was there.
     truePeak: Math.max(truePeak.read(), level.read().samplePeak),
     ...spectrum.finish(),
     tone: tracker?.finish() ?? null,
+    lowTone: lowTracker?.finish() ?? null,
   }));
 }

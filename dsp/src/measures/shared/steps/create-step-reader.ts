@@ -29,8 +29,9 @@ export interface StepReader {
   bandwidthOf(samples: Float64Array): number;
 }
 
-/** As far as a tone is looked for beside its place. */
+/** As far as a tone is looked for beside its place: a share of it, but at least so many bins. */
 const NEAR = 0.01;
+const NEAR_BINS = 1.5;
 
 /** Makes a reader of steps that shares windows and transforms between steps of one length. */
 export function createStepReader(sampleRateHz: number, capture: CaptureFacts): StepReader {
@@ -50,10 +51,11 @@ export function createStepReader(sampleRateHz: number, capture: CaptureFacts): S
   return {
     read: (samples, nearHz) => {
       const kit = kitOf(samples.length);
+      const reachHz = Math.max(NEAR * (nearHz ?? 0), (NEAR_BINS * sampleRateHz) / kit.plan.fftLength);
       const tracker =
         nearHz === null
           ? null
-          : createToneTracker(kit, { lowHz: nearHz * (1 - NEAR), highHz: nearHz * (1 + NEAR) });
+          : createToneTracker(kit, { lowHz: nearHz - reachHz, highHz: nearHz + reachHz });
       const accumulator = createSpectrumAccumulator(kit, (spectrum, start) =>
         tracker?.onSpectrum(spectrum, start),
       );
