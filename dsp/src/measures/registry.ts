@@ -6,6 +6,7 @@ import type { Measure } from './measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { twoToneMeasure } from './two-tone/two-tone-measure.js';
 import { twoToneStepsMeasure } from './two-tone-steps/two-tone-steps-measure.js';
+import { sweepMeasure } from './sweep/sweep-measure.js';
 import { toneMeasure } from './tone/tone-measure.js';
 
 const singleMeasures: readonly Measure[] = [
@@ -15,6 +16,7 @@ const singleMeasures: readonly Measure[] = [
   twoToneMeasure,
   twoToneStepsMeasure,
   levelStepsMeasure,
+  sweepMeasure,
 ];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */

@@ -89,6 +89,11 @@ export const WARNING_SENTENCES = {
   'segment-cut':
     'The recording holds the programme’s part {name} only from {from} to {to} s: what is there was measured.',
   'segment-not-measured': 'The programme’s part {name} could not be measured: {reason}.',
+  'sweep-cut': 'The recording lacks the sweep {missing}: the response is not to be trusted there.',
+  'clock-unknown':
+    'Without marks nothing tells the clocks of player and recorder apart: the phase is left out.',
+  'no-half-power-point':
+    'The response of the channel {channel} does not fall by 3 dB within the sweep: there is no such frequency to state.',
   'steps-missing':
     'The recording lacks the steps at {levels} dBFS: it began after them or ended before. The others were measured.',
   'steps-in-noise':
