@@ -6,6 +6,7 @@ import type { Measure } from './measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { twoToneMeasure } from './two-tone/two-tone-measure.js';
 import { twoToneStepsMeasure } from './two-tone-steps/two-tone-steps-measure.js';
+import { separationMeasure } from './separation/separation-measure.js';
 import { sweepMeasure } from './sweep/sweep-measure.js';
 import { toneMeasure } from './tone/tone-measure.js';
 
@@ -17,6 +18,7 @@ const singleMeasures: readonly Measure[] = [
   twoToneStepsMeasure,
   levelStepsMeasure,
   sweepMeasure,
+  separationMeasure,
 ];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */

@@ -89,6 +89,10 @@ export const WARNING_SENTENCES = {
   'segment-cut':
     'The recording holds the programme’s part {name} only from {from} to {to} s: what is there was measured.',
   'segment-not-measured': 'The programme’s part {name} could not be measured: {reason}.',
+  'separation-in-noise':
+    'What leaks from {direction} at {frequency} Hz stands in the noise: the separation is at least {least} dB.',
+  'channels-swapped':
+    'Each channel’s sweep lies in the other channel: left and right are swapped somewhere between player and recorder.',
   'sweep-cut': 'The recording lacks the sweep {missing}: the response is not to be trusted there.',
   'clock-unknown':
     'Without marks nothing tells the clocks of player and recorder apart: the phase is left out.',
