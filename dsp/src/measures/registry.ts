@@ -1,7 +1,10 @@
 import { DspInputError } from '../errors.js';
 import { dynamicRangeMeasure } from './dynamic-range/dynamic-range-measure.js';
 import { idleMeasure } from './idle/idle-measure.js';
+import { intersampleMeasure } from './intersample/intersample-measure.js';
+import { jitterMeasure } from './jitter/jitter-measure.js';
 import { levelStepsMeasure } from './level-steps/level-steps-measure.js';
+import { filterMeasure } from './filter/filter-measure.js';
 import type { Measure } from './measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { twoToneMeasure } from './two-tone/two-tone-measure.js';
@@ -19,6 +22,9 @@ const singleMeasures: readonly Measure[] = [
   levelStepsMeasure,
   sweepMeasure,
   separationMeasure,
+  filterMeasure,
+  jitterMeasure,
+  intersampleMeasure,
 ];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */

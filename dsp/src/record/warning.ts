@@ -93,6 +93,8 @@ export const WARNING_SENTENCES = {
     'What leaks from {direction} at {frequency} Hz stands in the noise: the separation is at least {least} dB.',
   'channels-swapped':
     'Each channel’s sweep lies in the other channel: left and right are swapped somewhere between player and recorder.',
+  'no-sidebands':
+    'No pair of lines stands out beside the tone in the channel {channel}: jitter is below the bound given.',
   'sweep-cut': 'The recording lacks the sweep {missing}: the response is not to be trusted there.',
   'clock-unknown':
     'Without marks nothing tells the clocks of player and recorder apart: the phase is left out.',
@@ -105,6 +107,11 @@ export const WARNING_SENTENCES = {
   'no-reference-step': 'The steps hold none near -20 dBFS: deviation is against the step at {level} dBFS.',
   'timeline-broken':
     'Samples were lost or doubled in the recording {where}: the parts were found one by one, and what falls on the break is not to be trusted.',
+  'noise-missing': 'The channel {channel} holds no white noise: it has no figures.',
+  'ripple-in-noise':
+    'The ripple is no greater than the noise’s own unevenness of {floor} dB: record for longer to see smaller ones.',
+  'images-out-of-reach':
+    'A recording at {rate} Hz doesn’t show images about half of {player}: record at twice the player’s rate and give the descriptor.',
   'stimulus-assumed':
     'The recording has neither marks nor a descriptor: it was measured as a {name}, with levels relative to the loudest part.',
 } as const;

@@ -29,7 +29,7 @@ export interface PlacedSteps {
 }
 
 export interface StepSearch {
-  readonly measure: 'level-steps' | 'two-tone-steps';
+  readonly measure: 'level-steps' | 'two-tone-steps' | 'intersample';
   /** The stimulus whose ladder is assumed when nothing names one. */
   readonly assumedName: string;
   /** Tone by which a ladder is found without marks, Hz; null for the strongest. */
