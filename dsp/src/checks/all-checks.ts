@@ -1,6 +1,7 @@
 import type { Check } from './check.js';
 import { levelChecks } from './level-checks.js';
 import { measureChecks } from './measure-checks.js';
+import { responseChecks } from './response-checks.js';
 import { toneChecks } from './tone-checks.js';
 import { weightingChecks } from './weighting-checks.js';
 import { windowChecks } from './window-checks.js';
@@ -12,6 +13,7 @@ export const checksByTopic: Readonly<Record<string, readonly Check[]>> = {
   weightings: weightingChecks,
   tones: toneChecks,
   measures: measureChecks,
+  responses: responseChecks,
 };
 
 export const allChecks: readonly Check[] = Object.values(checksByTopic).flat();
