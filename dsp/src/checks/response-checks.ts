@@ -22,13 +22,13 @@ async function play(
     bitsPerSample: '32f',
     ...(levelDbfs === undefined ? {} : { levelDbfs }),
   });
-  const { source } = stimulus;
-  const played = pass(await source.read(0, source.frameCount), rate, stages);
-  const recorded = hold === 1 ? played : played.map((samples) => holdFor(samples, hold));
+  const file = await stimulus.source.read(0, stimulus.source.frameCount);
+  const played = pass(file, rate, stages);
+  const recorded = played.map((samples) => holdFor(samples, hold));
   return analyseSamples(measure, recorded, rate * hold, { descriptor: stimulus.describe('') });
 }
 
-/** Each sample held, as a converter without a filter does. */
+/** As a converter without a filter does. */
 function holdFor(samples: Float64Array, times: number): Float64Array {
   return Float64Array.from({ length: samples.length * times }, (_, n) => samples[Math.floor(n / times)]);
 }
@@ -82,7 +82,7 @@ const harmonicChecks: readonly Check[] = [
     id: `sweep/polynomial/C-10.2/harmonic-${order}/${frequencyHz}`,
     source: 'u = 0.5 sin φ through u + 0.01 u² + 0.02 u³, powers of a sine by multiple angles: closed form',
     expected: 20 * Math.log10(amplitude / 0.501875),
-    tolerance: 0.01, // what a tapered cut leaves of the neighbouring responses
+    tolerance: 0.01, // what a tapered cut leaves of its neighbours
     unit: 'dBr',
     async compute() {
       const bent: PracticeStage = { kind: 'polynomial', channel: 'both', coefficients: [1, 0.01, 0.02] };
@@ -102,13 +102,8 @@ const butterworthChecks: readonly Check[] = butterworth.rows.map(({ order, corne
     tolerance: 0.01, // a response without noise
     unit: 'dB',
     async compute() {
-      const lowPass: PracticeStage = {
-        kind: 'filter',
-        channel: 'both',
-        type: 'low-pass',
-        frequencyHz: cornerHz,
-        order,
-      };
+      const shape = { type: 'low-pass', frequencyHz: cornerHz, order } as const;
+      const lowPass: PracticeStage = { kind: 'filter', channel: 'both', ...shape };
       return traceAt(await play('sweep', sweepMeasure, [lowPass]), 'response', 15_000);
     },
   };
@@ -188,7 +183,7 @@ const imageChecks: readonly Check[] = [2, 4].map((hold) => ({
   },
 }));
 
-/** Responses, separation and filters, whole measures against closed forms and a general-purpose library. */
+/** Whole measures against closed forms and a general-purpose library. */
 export const responseChecks: readonly Check[] = [
   ...constantChecks,
   ...harmonicChecks,

@@ -143,6 +143,16 @@ describe('filter', () => {
     expect(warningCodes(record)).not.toContain('images-out-of-reach');
   });
 
+  it('of a tenth of a second shows its noise, and says that it is noise', async () => {
+    const { channels } = await play({ isBare: true });
+    const record = await analyseSamples(filterMeasure, [channels[0].slice(24_000, 28_800)], RATE_HZ);
+    const [left] = record.channels;
+    // Closed form: flat. A sixteenth of 20 kHz for 0.1 s is known to 0.4 dB at best, and its extremes lie further apart.
+    expect(numberOf(left, 'passBandRippleDb')).toBeGreaterThan(0.4);
+    expect(left.limits['passBandRippleDb'].by).toBe('noise');
+    expect(left.uncertainty['passBandRippleDb'].standard).toBeGreaterThan(0.4);
+  });
+
   it('leaves a silent channel out, and refuses what isn’t noise', async () => {
     const { channels } = await play({ isBare: true });
     const record = await analyseSamples(

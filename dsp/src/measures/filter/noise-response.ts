@@ -13,6 +13,8 @@ const POINTS_PER_OCTAVE = 48;
 const BANDS_PER_OCTAVE = 24;
 /** Bands are widened until their means are known to this, dB. */
 const STABLE_DB = 0.1;
+/** No band takes more than this of the range: a short recording shows its noise, and says so, rather than nothing at all. */
+const WIDEST_SHARE = 1 / 16;
 const DB_PER_RELATIVE_POWER = 10 / Math.LN10;
 /** Third octave around 1 kHz. */
 const REFERENCE_LOW_HZ = 891.25;
@@ -59,7 +61,7 @@ export function readNoiseResponse(
   const x = Float64Array.from({ length: count }, (_, n) => lowHz * (highHz / lowHz) ** (n / (count - 1)));
   const deviationDb = new Float64Array(count);
   const y = x.map((hz, n) => {
-    const width = Math.min(highHz - lowHz, Math.max(span * hz, stableHz));
+    const width = Math.max(span * hz, Math.min(stableHz, WIDEST_SHARE * (highHz - lowHz)));
     const from = Math.min(highHz - width, Math.max(lowHz, hz - width / 2));
     const { mean, deviation } = bandMean(spectrum, from, from + width);
     deviationDb[n] = DB_PER_RELATIVE_POWER * Math.hypot(deviation, reference.deviation);
