@@ -95,6 +95,7 @@ export const WARNING_SENTENCES = {
     'Each channel’s sweep lies in the other channel: left and right are swapped somewhere between player and recorder.',
   'no-sidebands':
     'No pair of lines stands out beside the tone in the channel {channel}: jitter is below the bound given.',
+  'tones-unresolved': 'The segment is too short to part the lowest tones: record at least {wanted} s.',
   'sweep-cut': 'The recording lacks the sweep {missing}: the response is not to be trusted there.',
   'clock-unknown':
     'Without marks nothing tells the clocks of player and recorder apart: the phase is left out.',
