@@ -19,12 +19,12 @@ const MEASURE_TITLES: Record<MeasureId, string> = {
   programme: 'programme',
 };
 
-/** The measures a person may ask for on this page, in the order of a menu. */
-export const MEASURE_CHOICES = ['tone', 'idle', 'dynamic-range'] as const satisfies readonly MeasureId[];
-
 export function isMeasure(measure: string | null): measure is MeasureId {
   return measure !== null && Object.hasOwn(MEASURE_TITLES, measure);
 }
+
+/** The measures a person may ask for, in the order of a menu. */
+export const MEASURE_CHOICES: readonly MeasureId[] = Object.keys(MEASURE_TITLES).filter(isMeasure);
 
 export function measureTitle(measure: string): string {
   return isMeasure(measure) ? MEASURE_TITLES[measure] : measure.replaceAll('-', ' ');

@@ -15,10 +15,15 @@ const limit = (over: object) => ({
 });
 
 describe('the catalogue', () => {
-  it('knows every key that tone, idle and dynamic range may give', () => {
+  it('knows every key that a measure of the contract may give', () => {
     const contract =
-      'fundamentalFrequencyHz fundamentalLevelDbfs thdDb thdPercent thdPlusNoiseDb thdPlusNoisePercent sinadDb snrDb enobBits noiseDbfs noiseAWeightedDbfs noiseItu468RmsDbfs samplePeakDbfs truePeakDbtp crestFactorDb dcOffsetDbfs mainsFrequencyHz humDbfs dynamicRangeDb dynamicRangeAWeightedDb dynamicRangeItu468RmsDb';
+      'fundamentalFrequencyHz fundamentalLevelDbfs thdDb thdPercent thdPlusNoiseDb thdPlusNoisePercent sinadDb snrDb enobBits noiseDbfs noiseAWeightedDbfs noiseItu468RmsDbfs samplePeakDbfs truePeakDbtp crestFactorDb dcOffsetDbfs mainsFrequencyHz humDbfs dynamicRangeDb dynamicRangeAWeightedDb dynamicRangeItu468RmsDb ' +
+      'lowToneFrequencyHz highToneFrequencyHz lowToneLevelDbfs highToneLevelDbfs modulationDistortionDb modulationDistortionPercent differenceD2Db differenceD3Db differenceDistortionDb linearDownToDbfs maxDeviationDb fullScaleGainErrorDb flatnessDb minus3DbLowHz minus3DbHighHz levelAt20HzDb levelAt20kHzDb noiseAndDistortionDb separationLeftToRightAt1kHzDb separationRightToLeftAt1kHzDb separationLeftToRightAt10kHzDb separationRightToLeftAt10kHzDb balanceDb interchannelDelayS interchannelPolarity jitterPeakToPeakPs jitterRmsPs levelErrorDb passBandRippleDb imageRejectionDb integratedLufs loudnessRangeLu peakToLoudnessRatioDb clippedRunCount clockOffsetPpm';
     expect([...FIGURE_KEYS].sort()).toEqual(contract.split(' ').sort());
+  });
+
+  it('shows a delay between channels in microseconds', () => {
+    expect(formatFigureLine('interchannelDelayS', { value: -1.204e-6 })).toBe('\u22121.20\u00a0\u00b5s');
   });
 
   it('gives conditions in words', () => {

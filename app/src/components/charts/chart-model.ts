@@ -18,6 +18,13 @@ export type TraceKind = 'spectrum' | 'curve' | 'floor' | 'wave';
 /** The place of a trace in the order of colours, dashes and markers; it keeps it while hidden. */
 export type Slot = 1 | 2 | 3 | 4 | 5 | 6;
 
+const MOST_SLOTS = 6;
+
+/** The slot of the first, second … trace of a chart. */
+export function slotOf(index: number): Slot {
+  return Math.min(MOST_SLOTS, Math.max(0, index) + 1) as Slot;
+}
+
 export interface TraceModel {
   readonly id: string;
   readonly name: string;
@@ -31,10 +38,17 @@ export interface TraceModel {
   readonly y: ArrayLike<number>;
   /** In words beside the values of the readout, when it differs from the axis's. */
   readonly unit?: string;
+  /** A second reading of the same slot: thinner and without markers. */
+  readonly isSecond?: boolean;
 }
 
+/** A place on x that the ruler over the frame counts: a harmonic by its order, or a product by its own label. */
 export interface HarmonicMark {
   readonly order: number;
+  /** In the order's place on the ruler: "f2 - f1". */
+  readonly label?: string;
+  /** What the cursor calls it: "2nd harmonic" unless given. */
+  readonly name?: string;
   readonly x: number;
   /** Where its open disc stands; null where it doesn't stand clear of the floor. */
   readonly y: number | null;
@@ -63,15 +77,27 @@ export interface Wall {
   readonly words: string;
 }
 
+/** A part of the chart drawn larger in an empty corner, with a range of its own on y. */
+export interface Inset {
+  readonly title: string;
+  readonly view: ViewRange;
+}
+
 export interface ChartModel {
   readonly x: AxisModel;
   readonly y: AxisModel;
   readonly traces: readonly TraceModel[];
   readonly harmonics?: readonly HarmonicMark[];
+  /** What the ruler over the frame counts: "harmonics" unless given. */
+  readonly rulerWord?: string;
   readonly highlights?: readonly Highlight[];
   readonly notes?: readonly ChartNote[];
   readonly walls?: readonly Wall[];
   readonly hasZeroLine?: boolean;
+  /** One unit is as long on both axes: the frame is a square. */
+  readonly isSquare?: boolean;
+  /** Left out where the frame is too small for it, or while it is zoomed. */
+  readonly inset?: Inset;
   /** A few words in the lower left corner: the scale of the wave. */
   readonly cornerWords?: string;
 }

@@ -1,5 +1,6 @@
 import type { DrawContext } from './draw-context';
 import { drawFrame } from './draw-frame';
+import { drawInset } from './draw-inset';
 import { drawGraticule, drawGround, drawZeroLine } from './draw-graticule';
 import { drawHarmonicDiscs, drawHarmonicRuler } from './draw-harmonics';
 import { drawInsideLabels, drawRightLabels } from './draw-labels';
@@ -22,6 +23,7 @@ export function drawChart(context: DrawContext): void {
   drawDimensions(context);
   drawCornerWords(context);
   drawNotes(context, occupancy);
+  drawInset(context, occupancy);
   drawFrame(context);
   drawHarmonicRuler(context);
   if (geometry.isInside) drawInsideLabels(context, occupancy);

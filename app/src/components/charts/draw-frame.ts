@@ -1,12 +1,22 @@
 import { type DrawContext, snap } from './draw-context';
 import { strokeLine } from './draw-shapes';
 import { drawText } from './draw-text';
-import { formatTick } from './ticks';
+import { formatTick, tickDecimals } from './ticks';
 
 const TICK_PX = 4;
 
-/** Frame with square corners, ticks outward, their labels, and the two axis names, none of them turned. */
+/** Frame, ticks and the two axis names, none of them turned. */
 export function drawFrame(context: DrawContext): void {
+  drawBareFrame(context);
+  const { geometry, palette, model } = context;
+  const { left, top, width, height } = geometry;
+  const name = { sizePx: 12, weight: 600 as const, colour: palette.ink2 };
+  drawText(context, axisName(model.y), { ...name, x: 0, y: 13 });
+  drawText(context, axisName(model.x), { ...name, x: left + width, y: top + height + 31, align: 'right' });
+}
+
+/** Frame with square corners, ticks outward and their labels. */
+export function drawBareFrame(context: DrawContext): void {
   const { pen, geometry, palette, pixelRatio, model, ticks, scales } = context;
   const { left, top, width, height } = geometry;
   pen.setLineDash([]);
@@ -32,6 +42,7 @@ export function drawFrame(context: DrawContext): void {
     );
     drawText(context, formatTick(model.x, value), { ...label, x, y: top + height + 13, align: 'center' });
   }
+  const decimals = tickDecimals(ticks.y.major);
   for (const value of ticks.y.major) {
     const y = snap(scales.y.toPx(value), pixelRatio);
     strokeLine(
@@ -42,11 +53,8 @@ export function drawFrame(context: DrawContext): void {
       ],
       tickStroke,
     );
-    drawText(context, formatTick(model.y, value), { ...label, x: left - 8, y, align: 'right' });
+    drawText(context, formatTick(model.y, value, decimals), { ...label, x: left - 8, y, align: 'right' });
   }
-  const name = { sizePx: 12, weight: 600 as const, colour: palette.ink2 };
-  drawText(context, axisName(model.y), { ...name, x: 0, y: 13 });
-  drawText(context, axisName(model.x), { ...name, x: left + width, y: top + height + 31, align: 'right' });
 }
 
 /** "Level, dBFS" */

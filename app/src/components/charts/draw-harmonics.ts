@@ -9,15 +9,18 @@ const RULER_ABOVE_PX = 8;
 const TICK_PX = 8;
 const NUMBERED = new Set([1, 2, 3, 4, 5, 6, 7, 8, 10, 15, 20]);
 const NUMBERED_INSIDE = new Set([1, 2, 3, 5, 10]);
-const RULER_WORD = 'harmonics';
 
 /** One mark per order that lies in view: leaders and discs go with the channel, the ruler with the tone. */
 function ordersInView({ model, view }: Pick<ChartScene, 'model' | 'view'>): HarmonicMark[] {
-  const seen = new Map<number, HarmonicMark>();
+  const seen = new Map<string, HarmonicMark>();
   for (const mark of model.harmonics ?? []) {
-    if (mark.x >= view.xMin && mark.x <= view.xMax && !seen.has(mark.order)) seen.set(mark.order, mark);
+    if (mark.x >= view.xMin && mark.x <= view.xMax && !seen.has(wordOf(mark))) seen.set(wordOf(mark), mark);
   }
-  return [...seen.values()].sort((a, b) => a.order - b.order);
+  return [...seen.values()].sort((a, b) => a.x - b.x);
+}
+
+function wordOf({ label, order }: HarmonicMark): string {
+  return label ?? String(order);
 }
 
 export function hasRuler(scene: Pick<ChartScene, 'model' | 'view'>): boolean {
@@ -46,7 +49,9 @@ export function drawHarmonicRuler(context: DrawContext): void {
   const numbered = geometry.isInside ? NUMBERED_INSIDE : NUMBERED;
   const number = { sizePx: 11, isMono: true, colour: palette.ink2, align: 'center' as const };
   let freeFrom = -Infinity;
-  for (const { order, x } of orders) {
+  for (const mark of orders) {
+    const { order, x, label } = mark;
+    const text = wordOf(mark);
     const px = scales.x.toPx(x);
     strokeLine(
       context,
@@ -56,14 +61,15 @@ export function drawHarmonicRuler(context: DrawContext): void {
       ],
       stroke,
     );
-    const half = measure(String(order), number) / 2;
-    if (!numbered.has(order) || px - half < freeFrom) continue;
-    drawText(context, String(order), { ...number, x: px, y: y - 12 });
+    const half = measure(text, number) / 2;
+    if ((label === undefined && !numbered.has(order)) || px - half < freeFrom) continue;
+    drawText(context, text, { ...number, x: px, y: y - 12 });
     freeFrom = px + half + 3;
   }
   const word = { sizePx: 11.5, colour: palette.ink2 };
-  const isRoomLeft = start - measure(RULER_WORD, word) - 6 > geometry.left - 4;
-  drawText(context, RULER_WORD, {
+  const rulerWord = context.model.rulerWord ?? 'harmonics';
+  const isRoomLeft = start - measure(rulerWord, word) - 6 > geometry.left - 4;
+  drawText(context, rulerWord, {
     ...word,
     x: isRoomLeft ? start - 6 : end + 6,
     y,
@@ -77,8 +83,8 @@ export function drawHarmonicDiscs(context: DrawContext): void {
   const shownSlots = new Set(
     drawn.filter(({ trace }) => trace.kind === 'spectrum').map(({ trace }) => trace.slot),
   );
-  for (const { order, x, y, slot } of model.harmonics ?? []) {
-    if (order < 2 || y === null || y < view.yMin || y > view.yMax || x < view.xMin || x > view.xMax) continue;
+  for (const { x, y, slot } of model.harmonics ?? []) {
+    if (y === null || y < view.yMin || y > view.yMax || x < view.xMin || x > view.xMax) continue;
     if (!shownSlots.has(slot)) continue;
     const px = scales.x.toPx(x);
     const py = scales.y.toPx(y);

@@ -25,7 +25,7 @@ function drawWall(context: DrawContext, wall: Wall): void {
   strokeLine(context, points, { colour: palette.mask, width: 1.1 });
   pen.restore();
   const first = points[0];
-  if (!first) return;
+  if (!first || wall.words === '') return;
   drawText(context, wall.words, {
     sizePx: 12,
     colour: palette.ink2,

@@ -25,17 +25,27 @@ export interface GeometryWants {
   readonly labelWidth: number;
   /** The axis's name and the harmonics' ruler would collide on one row. */
   readonly hasTwoRows: boolean;
+  readonly isSquare?: boolean;
 }
 
-export function layOut({ totalWidth, totalHeight, labelWidth, hasTwoRows }: GeometryWants): Geometry {
+export function layOut({
+  totalWidth,
+  totalHeight,
+  labelWidth,
+  hasTwoRows,
+  isSquare = false,
+}: GeometryWants): Geometry {
   const isInside = totalWidth < INSIDE_BELOW;
   const right = labelWidth === 0 || isInside ? 14 : Math.min(156, Math.max(92, labelWidth + LABEL_LEAD));
   const top = hasTwoRows ? TOP_TWO_ROWS : TOP;
+  const width = Math.max(40, totalWidth - LEFT - right);
+  const height = Math.max(40, totalHeight - top - BOTTOM);
+  const side = Math.min(width, height);
   return {
     left: LEFT,
     top,
-    width: Math.max(40, totalWidth - LEFT - right),
-    height: Math.max(40, totalHeight - top - BOTTOM),
+    width: isSquare ? side : width,
+    height: isSquare ? side : height,
     totalWidth,
     totalHeight,
     isInside,

@@ -41,17 +41,36 @@ function formatX(axis: AxisModel, x: number, step: number): string {
   return withUnit(formatNumber(x, { decimals: decimalsForStep(step) }), axis.unit);
 }
 
-/** dB to a tenth; other units to a thousandth of the scale. */
+function isDecibels(unit: string): boolean {
+  return unit.startsWith('dB') || unit.startsWith('LU');
+}
+
+/** dB to a tenth, finer on a scale of a few dB; other units to a thousandth of the scale. */
 function formatY(axis: AxisModel, y: number): string {
-  const decimals = axis.unit.startsWith('dB') ? 1 : decimalsForStep((axis.max - axis.min) / 1000);
+  const range = axis.max - axis.min;
+  const decimals = isDecibels(axis.unit)
+    ? range <= 1
+      ? 3
+      : range <= 12
+        ? 2
+        : 1
+    : decimalsForStep(range / 1000);
   return formatNumber(y, { decimals, isSigned: axis.isSigned ?? false });
 }
 
-/** The harmonic whose place this is, within a pixel or two. */
-function harmonicAt({ model, scales }: ChartScene, x: number): number | null {
+/** The step between points about a place: a log-spaced curve needs fewer digits the higher it reads. */
+function stepAt({ x }: TraceModel, at: number): number {
+  const index = Math.min(x.length - 1, Math.max(1, lowerBound(x, at)));
+  return Math.abs((x[index] ?? 1) - (x[index - 1] ?? 0));
+}
+
+/** The harmonic or product whose place this is, within a pixel or two. */
+function markAt({ model, scales }: ChartScene, x: number): string | null {
   const px = scales.x.toPx(x);
   const mark = (model.harmonics ?? []).find((candidate) => Math.abs(scales.x.toPx(candidate.x) - px) < 1.6);
-  return mark?.order ?? null;
+  if (!mark) return null;
+  if (mark.name) return mark.name;
+  return mark.order === 1 ? 'fundamental' : `${formatOrdinal(mark.order)} harmonic`;
 }
 
 /** What the cursor reads at x: the drawn point nearest to it of each shown trace. */
@@ -60,7 +79,6 @@ export function readAt(scene: ChartScene, x: number): Readout | null {
   if (!stepped) return null;
   const index = nearestPoint(stepped, x);
   const atX = stepped.points.x[index] ?? x;
-  const step = Math.abs((stepped.trace.x[1] ?? 1) - (stepped.trace.x[0] ?? 0));
   const rows = scene.drawn.flatMap((drawn): ReadoutRow[] => {
     const at = drawn === stepped ? index : nearestPoint(drawn, atX);
     const y = drawn.points.y[at] ?? NaN;
@@ -78,10 +96,9 @@ export function readAt(scene: ChartScene, x: number): Readout | null {
       },
     ];
   });
-  const order = harmonicAt(scene, atX);
-  const place = formatX(scene.model.x, atX, step);
-  const name = order === null ? '' : order === 1 ? 'fundamental, ' : `${formatOrdinal(order)} harmonic, `;
-  const title = capitalise(name + place);
+  const mark = markAt(scene, atX);
+  const place = formatX(scene.model.x, atX, stepAt(stepped.trace, atX));
+  const title = capitalise(mark === null ? place : `${mark}, ${place}`);
   const count = Math.max(1, ...rows.map((row) => row.count));
   const values = rows.map((row) => `${row.trace.name} ${withUnit(row.number, row.unit)}`);
   return {

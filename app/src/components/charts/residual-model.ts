@@ -1,6 +1,7 @@
 import { decimalsForSignificant, formatNumber } from '@/lib/format/number';
 import { withUnit } from '@/lib/format/quantity';
-import type { ChartModel, ChartNote, Highlight, Slot, TraceModel } from './chart-model';
+import { niceCeiling } from './axis-range';
+import { type ChartModel, type ChartNote, type Highlight, slotOf, type TraceModel } from './chart-model';
 
 export interface ResidualChannel {
   readonly name: string;
@@ -20,18 +21,9 @@ export interface ResidualParts {
 
 /** The wave reaches so far up the residual's scale. */
 const WAVE_SHARE = 0.8;
-const NICE = [1, 2, 3, 4, 5, 6, 8, 10] as const;
 
 function greatest(values: Float64Array): number {
   return values.reduce((top, value) => Math.max(top, Math.abs(value)), 0);
-}
-
-/** The next round number of the same decade, so that ticks end on the frame. */
-function niceCeiling(value: number): number {
-  if (!(value > 0)) return 1;
-  const decade = 10 ** Math.floor(Math.log10(value));
-  const lead = NICE.find((candidate) => candidate * decade >= value * (1 - 1e-9)) ?? 10;
-  return Number((lead * decade).toPrecision(6));
 }
 
 export function residualModel({ channels, yUnit, highlights, notes }: ResidualParts): ChartModel {
@@ -42,7 +34,7 @@ export function residualModel({ channels, yUnit, highlights, notes }: ResidualPa
     id: name,
     name,
     kind: 'curve',
-    slot: Math.min(6, index + 1) as Slot,
+    slot: slotOf(index),
     x,
     y: residual,
   }));

@@ -27,7 +27,8 @@ const NAME = { sizePx: 12.5, weight: 600 as const };
 export function buildScene(wants: SceneWants): ChartScene {
   const { model, view, measure } = wants;
   const labelWidth = Math.max(0, ...model.traces.map(({ name, sub }) => widestLine(measure, name, sub)));
-  const size = { totalWidth: wants.width, totalHeight: wants.height, labelWidth };
+  const { isSquare } = model;
+  const size = { totalWidth: wants.width, totalHeight: wants.height, labelWidth, isSquare };
   const oneRow = layOut({ ...size, hasTwoRows: false });
   const hasTwoRows = hasRuler({ model, view }) && rulerMeetsName(wants, oneRow);
   const geometry = hasTwoRows ? layOut({ ...size, hasTwoRows }) : oneRow;
@@ -71,7 +72,8 @@ export function columnEdges(
   );
 }
 
-function drawnTrace(trace: TraceModel, scales: ChartScales, edges: Float64Array): DrawnTrace {
+/** One trace with the points that are drawn and where they stand. */
+export function drawnTrace(trace: TraceModel, scales: ChartScales, edges: Float64Array): DrawnTrace {
   const points = decimate(trace, edges);
   return { trace, points, px: points.x.map(scales.x.toPx), py: points.y.map(scales.y.toPx) };
 }

@@ -1,6 +1,6 @@
 import { formatNumber } from '@/lib/format/number';
 import { formatFrequency, formatLevel, formatOrdinal } from '@/lib/format/quantity';
-import type { ChartModel, ChartNote, HarmonicMark, Slot, TraceModel } from './chart-model';
+import { type ChartModel, type ChartNote, type HarmonicMark, slotOf, type TraceModel } from './chart-model';
 import { lowerBound } from './decimate';
 
 export interface SpectrumChannel {
@@ -32,14 +32,9 @@ const LOWEST_SHOWN_HZ = 20;
 const LEVEL_STEP_DB = 20;
 /** Below this nothing is measured, only computed. */
 const DEEPEST_DBFS = -200;
-const MOST_SLOTS = 6;
-
-function slotOf(index: number): Slot {
-  return Math.min(MOST_SLOTS, index + 1) as Slot;
-}
 
 /** Level of the bin nearest to a frequency, or of the greatest of it and its neighbours: the lobe's top. */
-function peakNear({ x, y }: Pick<SpectrumChannel, 'x' | 'y'>, frequencyHz: number): number | null {
+export function peakNear({ x, y }: Pick<SpectrumChannel, 'x' | 'y'>, frequencyHz: number): number | null {
   const at = lowerBound(x, frequencyHz);
   const near = y.subarray(Math.max(0, at - 3), at + 4);
   return near.length === 0 ? null : near.reduce((greatest, level) => Math.max(greatest, level), -Infinity);
@@ -49,7 +44,7 @@ function peakNear({ x, y }: Pick<SpectrumChannel, 'x' | 'y'>, frequencyHz: numbe
 const SAMPLED_POINTS = 2000;
 
 /** From a little under the noise to the next 20 dB over the highest line. */
-function levelRange(channels: readonly Pick<SpectrumChannel, 'y'>[]): { min: number; max: number } {
+export function levelRange(channels: readonly Pick<SpectrumChannel, 'y'>[]): { min: number; max: number } {
   let highest = -Infinity;
   const sampled: number[] = [];
   for (const { y } of channels) {
@@ -113,7 +108,7 @@ function harmonicMarks(
       const index = channels.findIndex(({ name }) => name === harmonic.channel);
       const channel = channels[index];
       const y = channel && harmonic.levelDbr !== null ? peakNear(channel, harmonic.frequencyHz) : null;
-      return { order, x: harmonic.frequencyHz, y, slot: slotOf(Math.max(0, index)) };
+      return { order, x: harmonic.frequencyHz, y, slot: slotOf(index) };
     });
     found.sort((a, b) => (b.y ?? -Infinity) - (a.y ?? -Infinity));
     if (found[0]) marks.push(found[0]);

@@ -1,4 +1,5 @@
 import type { AxisModel } from './chart-model';
+import { formatNumber } from '@/lib/format/number';
 import { formatPlain } from '@/lib/format/quantity';
 
 export interface Ticks {
@@ -77,9 +78,18 @@ export function makeTicks(axis: AxisModel, min: number, max: number, lengthPx: n
   return linearTicks(min, max, mostTicks);
 }
 
+/** Digits after the point of the finest of these ticks: 0.5 beside 0 prints as 0.0. */
+export function tickDecimals(values: readonly number[]): number {
+  return Math.max(
+    0,
+    ...values.map((value) => String(Number(value.toPrecision(9))).split('.')[1]?.length ?? 0),
+  );
+}
+
 /** 20 50 100 … 1k 2k: thousands of hertz by a k; signed scales print +. */
-export function formatTick(axis: AxisModel, value: number): string {
+export function formatTick(axis: AxisModel, value: number, decimals = 0): string {
   if (axis.unit === 'Hz' && Math.abs(value) >= 1000)
-    return `${formatPlain(Number((value / 1000).toPrecision(6)))}k`;
+    return `${axis.isSigned && value > 0 ? '+' : ''}${formatPlain(Number((value / 1000).toPrecision(6)))}k`;
+  if (axis.isSigned && decimals > 0) return formatNumber(value, { decimals, isSigned: true });
   return (axis.isSigned && value > 0 ? '+' : '') + formatPlain(Number(value.toPrecision(9)));
 }

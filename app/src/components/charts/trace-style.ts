@@ -42,11 +42,11 @@ export function styleOf(trace: TraceModel, palette: Palette): TraceStyle {
   const colour = traceColour(palette, slot);
   if (kind === 'spectrum')
     return { colour, textColour: colour, width: slot === 1 ? 1.3 : 1, dash: [], marker: null };
-  const isMarked = trace.x.length <= MOST_MARKED_POINTS;
+  const isMarked = trace.x.length <= MOST_MARKED_POINTS && !trace.isSecond;
   return {
     colour,
     textColour: colour,
-    width: slot === 1 ? 1.8 : 1.5,
+    width: trace.isSecond ? 1.1 : slot === 1 ? 1.8 : 1.5,
     dash: DASHES[slot],
     marker: isMarked ? MARKERS[slot] : null,
   };

@@ -27,10 +27,14 @@ function holdSpan(from: number, to: number): Span {
 
 /** What part of the chart is shown. A new model with other ranges starts whole. */
 export function useChartView(model: ChartModel): ChartView {
-  const [zoomed, setZoomed] = useState<{ of: ChartModel['x']; view: ViewRange } | null>(null);
+  const [zoomed, setZoomed] = useState<{ of: ViewRange; view: ViewRange } | null>(null);
   const whole = useMemo(() => wholeView(model), [model]);
   const { x: axisX, y: axisY } = model;
-  const isCurrent = zoomed?.of.min === axisX.min && zoomed.of.max === axisX.max;
+  const isCurrent =
+    zoomed?.of.xMin === whole.xMin &&
+    zoomed.of.xMax === whole.xMax &&
+    zoomed.of.yMin === whole.yMin &&
+    zoomed.of.yMax === whole.yMax;
   const view = zoomed && isCurrent ? zoomed.view : whole;
   const xShares = makeScale(axisX.scale, whole.xMin, whole.xMax, 0, 1);
   const yShares = makeScale(axisY.scale, whole.yMin, whole.yMax, 0, 1);
@@ -45,7 +49,7 @@ export function useChartView(model: ChartModel): ChartView {
       yMax: yShares.fromPx(yTo),
     };
     const isWhole = xTo - xFrom >= 0.9999 && yTo - yFrom >= 0.9999;
-    setZoomed(isWhole ? null : { of: axisX, view: next });
+    setZoomed(isWhole ? null : { of: whole, view: next });
   }
 
   function zoomAbout(x: number, direction: 'closer' | 'further'): void {

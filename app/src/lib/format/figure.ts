@@ -28,13 +28,13 @@ const BOUND_WORDS = { 'at-most': 'at most', 'at-least': 'at least' } as const;
 
 /** A figure as people read it: digits as many as its uncertainty allows. */
 export function formatFigure(key: string, { value, limit, uncertainty }: FigureParts): FigureText {
-  const { unit, digits, bound: boundSide } = describeFigure(key);
+  const { unit, digits, scale = 1, bound: boundSide } = describeFigure(key);
   if (typeof value === 'string') {
     return { integer: value, fraction: '', unit: '', plusMinus: null, bound: null, spoken: value };
   }
   const isBound = (value === null || value === undefined) && typeof limit?.below === 'number';
-  const number = isBound ? limit.below : value;
-  if (number === null || number === undefined) {
+  const stored = isBound ? limit.below : value;
+  if (stored === null || stored === undefined) {
     return {
       integer: NOT_MEASURED,
       fraction: '',
@@ -44,7 +44,8 @@ export function formatFigure(key: string, { value, limit, uncertainty }: FigureP
       spoken: 'not measured',
     };
   }
-  const expanded = isBound ? null : (uncertainty?.expanded ?? null);
+  const number = stored * scale;
+  const expanded = isBound || !uncertainty ? null : uncertainty.expanded * scale;
   const decimals = decimalsFor(number, expanded, digits);
   const text = formatNumber(number, { decimals });
   const [integer = text, fraction] = text.split('.');
