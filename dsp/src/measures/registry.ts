@@ -3,9 +3,11 @@ import { dynamicRangeMeasure } from './dynamic-range/dynamic-range-measure.js';
 import { idleMeasure } from './idle/idle-measure.js';
 import { intersampleMeasure } from './intersample/intersample-measure.js';
 import { jitterMeasure } from './jitter/jitter-measure.js';
+import { loudnessMeasure } from './loudness/loudness-measure.js';
 import { levelStepsMeasure } from './level-steps/level-steps-measure.js';
 import { filterMeasure } from './filter/filter-measure.js';
 import type { Measure } from './measure.js';
+import { multitoneMeasure } from './multitone/multitone-measure.js';
 import { createProgrammeMeasure } from './programme/programme-measure.js';
 import { twoToneMeasure } from './two-tone/two-tone-measure.js';
 import { twoToneStepsMeasure } from './two-tone-steps/two-tone-steps-measure.js';
@@ -23,8 +25,10 @@ const singleMeasures: readonly Measure[] = [
   sweepMeasure,
   separationMeasure,
   filterMeasure,
+  multitoneMeasure,
   jitterMeasure,
   intersampleMeasure,
+  loudnessMeasure,
 ];
 
 /** Every measure there is. Command line, worker, server and pages find theirs here. */

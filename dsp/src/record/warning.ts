@@ -96,6 +96,10 @@ export const WARNING_SENTENCES = {
   'no-sidebands':
     'No pair of lines stands out beside the tone in the channel {channel}: jitter is below the bound given.',
   'tones-unresolved': 'The segment is too short to part the lowest tones: record at least {wanted} s.',
+  'too-short-for-loudness': 'Loudness wants 0.4 s at least, and its range 3 s: the recording is shorter.',
+  'too-quiet-for-loudness': 'Nothing in the recording reaches -70 LUFS: it has no loudness to state.',
+  'programme-clipped':
+    'The programme is cut off: {runs} runs of three or more samples stand at an end of the scale.',
   'sweep-cut': 'The recording lacks the sweep {missing}: the response is not to be trusted there.',
   'clock-unknown':
     'Without marks nothing tells the clocks of player and recorder apart: the phase is left out.',
