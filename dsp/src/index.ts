@@ -43,6 +43,7 @@ export * from './spectrum/remove-lobes.js';
 export * from './tone/estimate-tone.js';
 export * from './tone/fit-sine.js';
 export * from './tone/phasor.js';
+export * from './findings/propose-findings.js';
 export * from './measures/registry.js';
 export * from './measures/recognise.js';
 export * from './measures/analyse-capture.js';

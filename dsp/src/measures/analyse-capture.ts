@@ -1,3 +1,4 @@
+import { proposeFindings } from '../findings/propose-findings.js';
 import type { BenchRecord, MeasureId } from '../record/record.js';
 import type { MarkMatch } from '../stimulus/locate-marks.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
@@ -37,8 +38,8 @@ export async function analyseCapture(
   { measure, settings = {}, descriptor = null }: CaptureRequest,
   { onProgress, signal }: Pick<AnalysisContext, 'onProgress' | 'signal'> = {},
 ): Promise<CaptureAnalysis> {
-  const run = (id: MeasureId, done: number, marks?: MarkMatch | null): Promise<BenchRecord> =>
-    getMeasure(id).analyse(wav, settings, {
+  const run = async (id: MeasureId, done: number, marks?: MarkMatch | null): Promise<BenchRecord> => {
+    const record = await getMeasure(id).analyse(wav, settings, {
       capture: captureFactsOf(wav, sha256),
       fileWarnings: wav.warnings,
       descriptor,
@@ -46,6 +47,8 @@ export async function analyseCapture(
       signal,
       onProgress: (share) => onProgress?.(done + share * (1 - done)),
     });
+    return { ...record, findings: proposeFindings(record) };
+  };
   if (measure) return { record: await run(measure, 0), recognition: null };
   const recognition = await recognise(wav, {
     descriptor,
