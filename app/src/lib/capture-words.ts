@@ -46,7 +46,9 @@ export function whatWasMeasured(capture: Pick<Capture, 'record' | 'fileName'>): 
 }
 
 /** "997 Hz at −1.0 dBFS", or null when the record has no tone. */
-export function toneWords(record: RecordSummary): string | null {
+export function toneWords(
+  record: Pick<RecordSummary, 'fundamentalFrequencyHz' | 'fundamentalLevelDbfs'>,
+): string | null {
   if (record.fundamentalFrequencyHz === null) return null;
   const frequency = formatFrequency(record.fundamentalFrequencyHz, 0);
   if (record.fundamentalLevelDbfs === null) return frequency;

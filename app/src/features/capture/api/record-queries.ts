@@ -1,16 +1,23 @@
-import type { BenchRecord } from '@benchlark/dsp';
+import type { BenchRecord, ChannelResult, Figures, RecordBody } from '@benchlark/dsp';
 import { queryOptions } from '@tanstack/react-query';
 import { api, unwrap } from '@/lib/api-client';
 import type { RecordDetail } from '@/lib/api-schema';
 import { fetchTrace } from '@/lib/fetch-trace';
 import type { TraceProgress, TraceRef } from '@/lib/fetch-trace';
 
-/** A record as the API gives it: the contract's own, with a reference in the place of each trace. */
-export type ServedRecord = Omit<BenchRecord, 'channels'> & {
-  readonly channels: readonly (Omit<BenchRecord['channels'][number], 'traces'> & {
+interface WithTraceRefs {
+  readonly channels: readonly (Omit<ChannelResult, 'traces'> & {
     readonly traces: Readonly<Record<string, TraceRef>>;
   })[];
-};
+  readonly between: { readonly figures: Figures; readonly traces: Readonly<Record<string, TraceRef>> };
+  readonly segments: readonly ServedBody[];
+}
+
+/** What a record and each part of a programme have alike, with a reference in the place of each trace. */
+export type ServedBody = Omit<RecordBody, keyof WithTraceRefs> & WithTraceRefs;
+
+/** A record as the API gives it. */
+export type ServedRecord = Omit<BenchRecord, keyof WithTraceRefs> & WithTraceRefs;
 
 export type ServedRecordDetail = Omit<RecordDetail, 'record'> & { readonly record: ServedRecord };
 

@@ -12,6 +12,7 @@ import { recordQueries } from '../api/record-queries';
 import type { ServedRecordDetail } from '../api/record-queries';
 import './capture.css';
 import { CaptureFiling } from './capture-filing';
+import { FindingsBlock } from './findings-block';
 import { CaptureHead } from './capture-head';
 import { MethodBlock } from './method-block';
 import { NoRecord } from './no-record';
@@ -25,13 +26,21 @@ export interface CapturePageProps {
   captureId: string;
   /** An older record that was asked for; the current one when null. */
   recordId: string | null;
+  /** The part of a programme that is open: 1, 2, 3 ...; the whole when null. */
+  part?: number | null;
 }
 
 /** A capture and one of its records: what was measured, left; what it means and where it is from, right. */
-export function CapturePage({ captureId, recordId }: CapturePageProps) {
+export function CapturePage({ captureId, recordId, part = null }: CapturePageProps) {
   const capture = useQuery(captureQueries.detail(captureId));
   if (capture.data)
-    return <CaptureView capture={capture.data} recordId={recordId ?? capture.data.record?.id ?? null} />;
+    return (
+      <CaptureView
+        capture={capture.data}
+        recordId={recordId ?? capture.data.record?.id ?? null}
+        part={part}
+      />
+    );
   const isUnknown = capture.error instanceof ApiError && capture.error.status === 404;
   return (
     <Page>
@@ -53,13 +62,19 @@ export function CapturePage({ captureId, recordId }: CapturePageProps) {
   );
 }
 
-function CaptureView({ capture, recordId }: { capture: Capture; recordId: string | null }) {
+interface CaptureViewProps {
+  capture: Capture;
+  recordId: string | null;
+  part: number | null;
+}
+
+function CaptureView({ capture, recordId, part }: CaptureViewProps) {
   const record = useQuery({ ...recordQueries.detail(recordId ?? ''), enabled: recordId !== null });
   const detail = record.data?.captureId === capture.id ? record.data : null;
   return (
     <Page>
       <CaptureHead capture={capture} detail={detail} />
-      <Columns margin={<CaptureMargin capture={capture} detail={detail} recordId={recordId} />}>
+      <Columns margin={<CaptureMargin capture={capture} detail={detail} recordId={recordId} part={part} />}>
         {recordId === null && <NoRecord capture={capture} />}
         {recordId !== null && record.isPending && <LoadingState what="Fetching the record" />}
         {record.isError && (
@@ -70,7 +85,7 @@ function CaptureView({ capture, recordId }: { capture: Capture; recordId: string
           />
         )}
         {record.data && !detail && <FailedState what="This record is of another capture." />}
-        {detail && <RecordView key={detail.id} capture={capture} detail={detail} />}
+        {detail && <RecordView key={detail.id} capture={capture} detail={detail} part={part} />}
       </Columns>
     </Page>
   );
@@ -80,13 +95,16 @@ interface CaptureMarginProps {
   capture: Capture;
   detail: ServedRecordDetail | null;
   recordId: string | null;
+  part: number | null;
 }
 
-function CaptureMargin({ capture, detail, recordId }: CaptureMarginProps) {
+function CaptureMargin({ capture, detail, recordId, part }: CaptureMarginProps) {
   const canWrite = canWriteCaptures(usePerson());
+  const shown = part === null ? null : (detail?.record.segments[part - 1] ?? null);
   return (
     <>
-      <WarningsBlock capture={capture} record={detail?.record ?? null} />
+      {detail && <FindingsBlock record={detail.record} />}
+      <WarningsBlock capture={capture} record={shown ?? detail?.record ?? null} />
       <CaptureFiling capture={capture} canWrite={canWrite} />
       <ProvenanceBlock capture={capture} record={detail?.record ?? null} />
       {detail && <MethodBlock capture={capture} record={detail.record} canWrite={canWrite} />}

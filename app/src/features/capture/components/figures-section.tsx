@@ -4,17 +4,54 @@ import { Section } from '@/components/page/page';
 import { formatFigure } from '@/lib/format/figure';
 import { channelName } from '@/lib/capture-words';
 import { PHONE_QUERY, useMedia } from '@/lib/use-media';
-import type { ServedRecord } from '../api/record-queries';
+import type { ServedBody } from '../api/record-queries';
 import { buildFigureTable } from '../model/figure-table';
 import type { FigureCell, FigureRow, FigureTable } from '../model/figure-table';
 
 /** Figures of all channels in one table: unit, conditions, uncertainty and worth beside each. */
-export function FiguresSection({ record }: { record: ServedRecord }) {
+export function FiguresSection({ record }: { record: ServedBody }) {
   const table = buildFigureTable(record);
   const isPhone = useMedia(PHONE_QUERY);
+  if (table.rows.length === 0) return null;
   return (
     <Section title="Figures" sub={isPhone ? undefined : '± is the expanded uncertainty, k = 2'}>
-      <div className="bl-table-scroll" tabIndex={0} role="region" aria-label="Table of figures">
+      <FigureTableView table={table} label="Table of figures" />
+    </Section>
+  );
+}
+
+const BETWEEN_TITLES: Partial<Record<ServedBody['measure'], string>> = {
+  separation: 'Between the channels',
+  loudness: 'The whole recording',
+  programme: 'The whole recording',
+};
+
+/** Figures that belong to no one channel: separation, loudness, a programme's clock. */
+export function BetweenSection({ record }: { record: ServedBody }) {
+  const { settings, warnings, between, measure } = record;
+  const one = { channel: 'between', figures: between.figures, limits: {}, uncertainty: {} };
+  const table = buildFigureTable({ settings, warnings, channels: [one] });
+  if (table.rows.length === 0) return null;
+  const title = BETWEEN_TITLES[measure] ?? 'Between the channels';
+  return (
+    <Section title={title}>
+      <FigureTableView table={table} label={title} isWhole />
+    </Section>
+  );
+}
+
+interface FigureTableViewProps {
+  table: FigureTable;
+  label: string;
+  /** One column, of no channel. */
+  isWhole?: boolean;
+}
+
+function FigureTableView({ table, label, isWhole = false }: FigureTableViewProps) {
+  const isPhone = useMedia(PHONE_QUERY);
+  return (
+    <>
+      <div className="bl-table-scroll" tabIndex={0} role="region" aria-label={label}>
         <table className="bl-table bl-figure-table">
           <thead>
             <tr>
@@ -22,7 +59,7 @@ export function FiguresSection({ record }: { record: ServedRecord }) {
               {!isPhone && <th scope="col">unit</th>}
               {table.channels.map((channel) => (
                 <th key={channel} scope="col" className="bl-figure-head">
-                  {channelName(channel)}
+                  {isWhole ? 'value' : channelName(channel)}
                 </th>
               ))}
               {table.hasRig && !isPhone && (
@@ -40,7 +77,7 @@ export function FiguresSection({ record }: { record: ServedRecord }) {
         </table>
       </div>
       <WorthKey worths={table.worths} />
-    </Section>
+    </>
   );
 }
 
@@ -54,7 +91,7 @@ function spareCh(row: FigureRow, cell: FigureCell, table: FigureTable): number {
 
 function FigureRowView({ row, table, isPhone }: { row: FigureRow; table: FigureTable; isPhone: boolean }) {
   return (
-    <tr>
+    <tr id={`figure-${row.key}`}>
       <th scope="row">
         {row.label}{' '}
         {isPhone ? (

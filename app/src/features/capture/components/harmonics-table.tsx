@@ -1,10 +1,10 @@
 import { Figure } from '@/components/figures/figure';
 import { channelName } from '@/lib/capture-words';
 import { formatFrequency } from '@/lib/format/quantity';
-import type { ServedRecord } from '../api/record-queries';
+import type { ServedBody } from '../api/record-queries';
 
 /** Each harmonic against the fundamental; what stands in the noise has a dash. */
-export function HarmonicsTable({ record }: { record: ServedRecord }) {
+export function HarmonicsTable({ record }: { record: ServedBody }) {
   const channels = record.channels.filter(({ harmonics }) => harmonics.length > 0);
   const orders = [...new Set(channels.flatMap(({ harmonics }) => harmonics.map(({ order }) => order)))].sort(
     (a, b) => a - b,

@@ -37,7 +37,9 @@ export function MethodBlock({ capture, record, canWrite }: MethodBlockProps) {
         </Sentence>
       )}
       <p className="bl-ink-2 bl-small">
-        {formatPoints(record.settings.fftLength)} points, {record.settings.window} window.
+        {record.settings.fftLength > 0
+          ? `${formatPoints(record.settings.fftLength)} points, ${record.settings.window} window.`
+          : 'Each part by its own points and window.'}
       </p>
       <RunningWords capture={capture} />
     </MarginBlock>

@@ -2,10 +2,10 @@ import { MarginBlock, WarningBlock } from '@/components/page/page';
 import type { Capture } from '@/lib/api-schema';
 import { channelName } from '@/lib/capture-words';
 import { describeFigure } from '@/lib/figures';
-import type { ServedRecord } from '../api/record-queries';
+import type { ServedBody } from '../api/record-queries';
 
 /** What to know before a figure is used, in plain words. */
-export function WarningsBlock({ capture, record }: { capture: Capture; record: ServedRecord | null }) {
+export function WarningsBlock({ capture, record }: { capture: Capture; record: ServedBody | null }) {
   const warnings = record?.warnings ?? [];
   // The record repeats what the file itself gave rise to; it is said once.
   const ofFile = capture.fileWarnings.filter(

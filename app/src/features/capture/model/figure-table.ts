@@ -44,7 +44,10 @@ const MOST_FRACTION_CH = 3;
 export function buildFigureTable(record: FigureRecord): FigureTable {
   const channels = record.channels.map(({ channel }) => channel);
   const rows = keysOf(record.channels).map((key) => buildRow(key, record));
-  const texts = rows.flatMap(({ key, cells }) => cells.map((cell) => formatFigure(key, cell)));
+  // A word (a polarity) stands where a number would and widens no column of numbers.
+  const numbers = rows.flatMap(({ key, cells }) =>
+    cells.filter(({ value }) => typeof value !== 'string').map((cell) => formatFigure(key, cell)),
+  );
   const worths = rows.flatMap(({ key, cells }) =>
     cells.flatMap(({ value, limit }) => worthOfFigure(key, value, limit)?.worth ?? []),
   );
@@ -52,11 +55,11 @@ export function buildFigureTable(record: FigureRecord): FigureTable {
   return {
     channels,
     rows,
-    integerCh: widest(texts.map(({ integer, bound }) => integer.length + (bound ? 1 : 0))),
-    fractionCh: Math.min(MOST_FRACTION_CH, widest(texts.map(({ fraction }) => fraction.length))),
+    integerCh: widest(numbers.map(({ integer, bound }) => integer.length + (bound ? 1 : 0))),
+    fractionCh: Math.min(MOST_FRACTION_CH, widest(numbers.map(({ fraction }) => fraction.length))),
     // A percentage's long ± would push every other row's mark away from its value.
     uncertaintyCh: widest(
-      texts
+      numbers
         .filter(({ fraction }) => fraction.length <= MOST_FRACTION_CH)
         .map(({ plusMinus, bound }) => (bound ? 'bound'.length : (plusMinus?.length ?? 0))),
     ),
