@@ -326,22 +326,16 @@ describe('recognition by signal', () => {
       samples: sine(RATE * 3, RATE, 997, 1).map((x) => Math.max(-0.7, Math.min(0.4, x))),
       measure: 'tone',
     },
-  ])('takes $name for $measure', async ({ samples, measure }) => {
-    expect(await recognise(openMemorySource([samples], RATE))).toMatchObject({ measure, stimulusName: null });
-  });
-
-  it.each([
-    { name: 'noise', samples: whiteNoise(RATE * 3, 0.1, 1) },
+    { name: 'noise', samples: whiteNoise(RATE * 3, 0.1, 1), measure: 'filter' },
     {
       name: 'two tones',
       samples: synthesise(RATE * 3, RATE, [
         { frequencyHz: 60, amplitude: 0.6 },
         { frequencyHz: 7000, amplitude: 0.15 },
       ]),
+      measure: 'two-tone',
     },
-  ])('doesn’t take $name for anything', async ({ samples }) => {
-    await expect(recognise(openMemorySource([samples], RATE))).rejects.toMatchObject({
-      code: 'NOT_RECOGNISED',
-    });
+  ])('takes $name for $measure', async ({ samples, measure }) => {
+    expect(await recognise(openMemorySource([samples], RATE))).toMatchObject({ measure, stimulusName: null });
   });
 });

@@ -6,7 +6,7 @@ import { findStimulusKind } from '../stimulus/stimulus-kinds.js';
 import type { StimulusDescriptor } from '../stimulus/descriptor.js';
 import type { AnalysisContext } from './measure.js';
 import { measures } from './registry.js';
-import { recogniseSignal } from './shared/recognise-signal.js';
+import { recogniseSignal } from './recognise-by-signal/recognise-signal.js';
 
 /** What a recording was taken for. */
 export interface Recognition {

@@ -12,6 +12,8 @@ export interface LevelEnvelope {
 }
 
 const BLOCK_S = 0.01;
+/** A block holds at least so many periods of the tone. */
+const LEAST_PERIODS = 2;
 const LOOK_FRAMES = 65_536;
 const NEAR_NOMINAL = 0.02;
 const FLOOR_DB = -160;
@@ -28,7 +30,6 @@ export async function followLevel(
   context: Pick<AnalysisContext, 'signal'>,
 ): Promise<LevelEnvelope | null> {
   const { sampleRateHz, frameCount, channelCount } = source;
-  const blockFrames = Math.max(1, Math.round(BLOCK_S * sampleRateHz));
   const loudest = await findLoudest(source, context);
   if (loudest === null) return null;
   const samples = (await source.read(loudest.from, Math.min(LOOK_FRAMES, frameCount - loudest.from)))[
@@ -42,6 +43,8 @@ export async function followLevel(
       : { lowHz: nominalHz * (1 - NEAR_NOMINAL), highHz: nominalHz * (1 + NEAR_NOMINAL) },
   );
   if (tone === null || channelCount === 0) return null;
+  const blockS = Math.max(BLOCK_S, LEAST_PERIODS / Math.max(1, tone.frequencyHz));
+  const blockFrames = Math.max(1, Math.round(blockS * sampleRateHz));
   const blocks = new Float64Array(Math.floor(frameCount / blockFrames));
   const turn = (2 * Math.PI * tone.frequencyHz) / sampleRateHz;
   const [stepRe, stepIm] = [Math.cos(turn), Math.sin(turn)];

@@ -3,6 +3,8 @@ import type { LevelEnvelope } from './follow-level.js';
 
 /** Steps this far below the top count no more: they may lie in the noise. */
 const DEPTH_DB = 45;
+/** Blocks of each step that are looked at: its edges and what lies between. */
+const LOOKS = 7;
 /** Beside a step's edges a block holds two levels. */
 const EDGE_S = 0.03;
 /** Half of the blocks lie this near the ladder, whatever a device does to its top. */
@@ -22,10 +24,15 @@ export function matchLadder(envelope: LevelEnvelope, ladder: readonly StimulusSt
   const { blockS, levelsDb } = envelope;
   const top = Math.max(...ladder.map(({ levelDbfs }) => levelDbfs));
   const near = ladder.filter(({ levelDbfs }) => levelDbfs >= top - DEPTH_DB);
+  const edgeS = Math.max(EDGE_S, blockS);
   const template = near.flatMap(({ levelDbfs, fromS, toS }) => {
-    const first = Math.ceil((fromS + EDGE_S) / blockS);
-    const count = Math.floor((toS - EDGE_S) / blockS) - first;
-    return Array.from({ length: Math.max(0, count) }, (_, k) => ({ block: first + k, levelDbfs }));
+    const first = Math.ceil((fromS + edgeS) / blockS);
+    const count = Math.max(0, Math.floor((toS - edgeS) / blockS) - first);
+    const looks = Math.min(LOOKS, count);
+    return Array.from({ length: looks }, (_, k) => ({
+      block: first + Math.round((k * (count - 1)) / Math.max(1, looks - 1)),
+      levelDbfs,
+    }));
   });
   if (template.length === 0) return null;
   const firstBlock = template[0].block;

@@ -1,17 +1,18 @@
-import { DspInputError } from '../../errors.js';
 import { meanSquareToDbfs } from '../../level/decibel.js';
-import type { MeasureId } from '../../record/record.js';
 import { channelName } from '../../source/channel-name.js';
 import type { CaptureFacts, SampleSource } from '../../source/sample-source.js';
 import { removeLobes } from '../../spectrum/remove-lobes.js';
 import type { AnalysisContext } from '../measure.js';
-import { findSpurs } from './find-spurs.js';
-import { lookForTones } from './look-for-tone.js';
-import { settleSegment } from './open-analysis.js';
-import { planFrames } from './plan-frames.js';
-import { scanSegment, type ChannelScan } from './scan-segment.js';
-import { shortLevel, shortNumber } from './settings-band.js';
-import type { FrameRange } from './stream-frames.js';
+import type { SignalRecognition } from './signal-recognition.js';
+import { recogniseChange } from './recognise-change.js';
+import { recogniseSpectrum } from './recognise-spectrum.js';
+import { findSpurs } from '../shared/find-spurs.js';
+import { lookForTones } from '../shared/look-for-tone.js';
+import { settleSegment } from '../shared/open-analysis.js';
+import { planFrames } from '../shared/plan-frames.js';
+import { scanSegment, type ChannelScan } from '../shared/scan-segment.js';
+import { shortLevel, shortNumber } from '../shared/settings-band.js';
+import type { FrameRange } from '../shared/stream-frames.js';
 
 /** Seconds that show what a steady signal is. */
 const LOOK_S = 10;
@@ -26,17 +27,18 @@ const COMPANION = 0.01;
 const REST = 0.25;
 const STEADY_DB = 3;
 const HARMONICS = 60;
+const USUAL_RATES_HZ = [44_100, 48_000, 88_200, 96_000, 176_400, 192_000];
+/** A clock keeps its rate within this. */
+const SAME_CLOCK = 3e-4;
+/** The jitter test's tone lies at -3 dBFS, through whatever gain. */
+const LOUD_QUARTER_DBFS = -25;
 const MAINS_HZ = [50, 60, 100, 120, 150, 180];
 
-export interface SignalRecognition {
-  readonly measure: MeasureId;
-  readonly why: string;
-}
-
 /**
- * Tells a tone, a quiet tone and silence apart by the signal alone.
+ * Tells what a recording holds by its signal alone: steps and sweeps by how they change, then what is steady by its
+ * spectrum; sound that is none of these counts as music.
  *
- * @throws DspInputError `NOT_RECOGNISED` for anything else, such as music, noise or several tones
+ * @throws DspInputError `EMPTY_SIGNAL`, `SEGMENT_TOO_SHORT`, `CANCELLED`
  */
 export async function recogniseSignal(
   source: SampleSource,
@@ -44,7 +46,10 @@ export async function recogniseSignal(
 ): Promise<SignalRecognition> {
   const context: AnalysisContext = { capture: unknownCapture(source), signal: options.signal };
   const tell = (share: number): void => options.onProgress?.(share);
-  const steady = await settleSegment(source, {}, null, false, context, (share) => tell(share * 0.8));
+  const changing = await recogniseChange(source, context);
+  tell(0.4);
+  if (changing !== null) return changing;
+  const steady = await settleSegment(source, {}, null, false, context, (share) => tell(0.4 + share * 0.4));
   const range = middleOf(steady, LOOK_S * source.sampleRateHz);
   const plan = planFrames(range.to - range.from);
   const sights = await lookForTones(source, range, plan, null);
@@ -61,10 +66,22 @@ export async function recogniseSignal(
     },
   );
   const loudest = scans.reduce((one, other) => (acPower(other) > acPower(one) ? other : one));
-  return recogniseChannel(loudest);
+  const single = recogniseChannel(loudest);
+  if ('measure' in single) return single;
+  const many = recogniseSpectrum(loudest);
+  if (many !== null) return many;
+  return {
+    measure: 'loudness',
+    why: `it holds ${single.found}: it is taken for music, whose loudness and clipped runs can be told`,
+  };
 }
 
-function recogniseChannel(scan: ChannelScan): SignalRecognition {
+/** What is there, in words, where it is neither silence nor one tone. */
+interface Unknown {
+  readonly found: string;
+}
+
+function recogniseChannel(scan: ChannelScan): SignalRecognition | Unknown {
   const power = acPower(scan);
   if (power === 0) return { measure: 'idle', why: 'every sample is zero' };
   const levelDbfs = meanSquareToDbfs(power);
@@ -74,12 +91,20 @@ function recogniseChannel(scan: ChannelScan): SignalRecognition {
     if (levelDbfs < SILENCE_DBFS || (isHum && levelDbfs < QUIET_TONE_DBFS)) {
       return { measure: 'idle', why: `nothing is played: all of it lies at ${shortLevel(levelDbfs)} dBFS` };
     }
-    throw notRecognised(`a signal at ${shortLevel(levelDbfs)} dBFS without a tone that stands out`);
+    return { found: `a signal at ${shortLevel(levelDbfs)} dBFS without a tone that stands out` };
   }
   const about = `a steady tone of ${shortNumber(tone.frequencyHz)} Hz at ${shortLevel(tone.levelDbfs)} dBFS`;
-  if (!tone.isSingle)
-    throw notRecognised(`a line of ${shortNumber(tone.frequencyHz)} Hz with others beside it`);
-  if ((scan.tone?.levelSpreadDb ?? 0) > STEADY_DB) throw notRecognised('a tone that changes its level');
+  if (!tone.isSingle) {
+    return { found: `a line of ${shortNumber(tone.frequencyHz)} Hz with others beside it` };
+  }
+  if ((scan.tone?.levelSpreadDb ?? 0) > STEADY_DB) return { found: 'a tone that changes its level' };
+  const quarterOf = tone.levelDbfs > LOUD_QUARTER_DBFS ? rateOfQuarter(tone.frequencyHz) : null;
+  if (quarterOf !== null) {
+    return {
+      measure: 'jitter',
+      why: `it holds ${about}, a quarter of ${quarterOf} Hz as in the jitter test`,
+    };
+  }
   return tone.levelDbfs < QUIET_TONE_DBFS
     ? { measure: 'dynamic-range', why: `it holds ${about}, so quiet that it shows the noise below it` }
     : { measure: 'tone', why: `it holds ${about}` };
@@ -115,6 +140,11 @@ function lookAtTone(
   return { frequencyHz, levelDbfs, isSingle };
 }
 
+/** The usual rate that a tone is a quarter of; null for another tone. */
+function rateOfQuarter(frequencyHz: number): number | null {
+  return USUAL_RATES_HZ.find((rate) => Math.abs((4 * frequencyHz) / rate - 1) < SAME_CLOCK) ?? null;
+}
+
 function acPower(scan: ChannelScan): number {
   return Math.max(0, scan.level.meanSquare - scan.level.mean ** 2);
 }
@@ -123,13 +153,6 @@ function middleOf(range: FrameRange, atMost: number): FrameRange {
   const length = Math.min(range.to - range.from, Math.round(atMost));
   const from = range.from + ((range.to - range.from - length) >> 1);
   return { from, to: from + length };
-}
-
-function notRecognised(found: string): DspInputError {
-  return new DspInputError('NOT_RECOGNISED', `the recording can't be told by its signal: it holds ${found}`, {
-    found,
-    remedy: 'Name the measure, or give the stimulus’s descriptor.',
-  });
 }
 
 /** The facts that a scan asks for; nothing of them enters what is recognised. */
