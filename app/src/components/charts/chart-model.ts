@@ -94,6 +94,8 @@ export interface ChartModel {
   readonly notes?: readonly ChartNote[];
   readonly walls?: readonly Wall[];
   readonly hasZeroLine?: boolean;
+  /** Names of a chart that stands over or under this one: both keep the same room for them. */
+  readonly labelRoom?: readonly string[];
   /** One unit is as long on both axes: the frame is a square. */
   readonly isSquare?: boolean;
   /** Left out where the frame is too small for it, or while it is zoomed. */

@@ -14,6 +14,8 @@ import { makeTicks } from './ticks';
 /** A smaller plot has no room for a plot within it. */
 const LEAST_PLOT_PX = { width: 460, height: 250 };
 const SHARE = { width: 0.4, height: 0.52 };
+/** From as large as it should be down to as small as can be read. */
+const SCALES = [1, 0.9, 0.8, 0.7] as const;
 const FROM_FRAME_PX = 10;
 const PAD = { left: 44, right: 14, top: 28, bottom: 26 };
 const TICK_GAP_PX = { x: 34, y: 26 };
@@ -25,7 +27,8 @@ export function drawInset(context: DrawContext, occupancy: Occupancy): void {
   if (!inset || geometry.width < LEAST_PLOT_PX.width || geometry.height < LEAST_PLOT_PX.height) return;
   const whole = wholeView(model);
   const isZoomed = (['xMin', 'xMax', 'yMin', 'yMax'] as const).some((edge) => view[edge] !== whole[edge]);
-  const box = isZoomed ? null : emptyCorner(geometry, occupancy);
+  if (isZoomed) return;
+  const box = SCALES.map((scale) => emptyCorner(geometry, occupancy, scale)).find((found) => found !== null);
   if (!box) return;
   occupancy.take(box);
   outlineSource(context, inset);
@@ -37,8 +40,15 @@ export function drawInset(context: DrawContext, occupancy: Occupancy): void {
   drawBareFrame(inner);
 }
 
-function emptyCorner({ left, top, width, height }: Geometry, occupancy: Occupancy): Box | null {
-  const size = { width: Math.min(260, width * SHARE.width), height: Math.min(210, height * SHARE.height) };
+function emptyCorner(
+  { left, top, width, height }: Geometry,
+  occupancy: Occupancy,
+  scale: number,
+): Box | null {
+  const size = {
+    width: scale * Math.min(260, width * SHARE.width),
+    height: scale * Math.min(210, height * SHARE.height),
+  };
   const right = left + width - size.width - FROM_FRAME_PX;
   const bottom = top + height - size.height - FROM_FRAME_PX;
   const corners = [

@@ -26,7 +26,8 @@ const NAME = { sizePx: 12.5, weight: 600 as const };
 /** Works out everything that is drawn, without drawing: layout, scales, ticks, points under each pixel. */
 export function buildScene(wants: SceneWants): ChartScene {
   const { model, view, measure } = wants;
-  const labelWidth = Math.max(0, ...model.traces.map(({ name, sub }) => widestLine(measure, name, sub)));
+  const names = [...model.traces, ...(model.labelRoom ?? []).map((name) => ({ name, sub: undefined }))];
+  const labelWidth = Math.max(0, ...names.map(({ name, sub }) => widestLine(measure, name, sub)));
   const { isSquare } = model;
   const size = { totalWidth: wants.width, totalHeight: wants.height, labelWidth, isSquare };
   const oneRow = layOut({ ...size, hasTwoRows: false });

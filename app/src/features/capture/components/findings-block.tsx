@@ -4,9 +4,8 @@ import { SeverityMark } from '@/components/figures/severity-mark';
 import { Quantity } from '@/components/figures/quantity';
 import { MarginBlock } from '@/components/page/page';
 import { channelName } from '@/lib/capture-words';
-import { describeFigure } from '@/lib/figures';
-import { formatFigureLine } from '@/lib/format/figure';
-import { formatLevel } from '@/lib/format/quantity';
+import { decimalsForSignificant, formatNumber, MINUS } from '@/lib/format/number';
+import { formatLevel, withUnit } from '@/lib/format/quantity';
 import type { ServedRecord } from '../api/record-queries';
 import { placeOfFinding } from '../model/finding-place';
 import { partSearch } from '../model/part-address';
@@ -33,17 +32,20 @@ function FindingView({ finding, record }: { finding: Finding; record: ServedReco
   return (
     <details className="bl-finding">
       <summary>
-        <SeverityMark severity={severity} hasWord />
-        <span className="bl-finding-summary">{summary}</span>
+        <span className="bl-finding-lead">
+          <SeverityMark severity={severity} hasWord />
+          <span className="bl-finding-more">evidence</span>
+        </span>
+        <span className="bl-finding-summary">{summary.replace(/-(?=\d)/g, MINUS)}</span>
         {where && <span className="bl-ink-2">{where}</span>}
       </summary>
       {evidence.length > 0 && (
         <dl className="bl-finding-evidence">
-          {evidence.map(({ figure, value }) => (
+          {evidence.map(({ figure, value, unit }) => (
             <div key={figure}>
-              <dt>{describeFigure(figure).label}</dt>
+              <dt>{figure}</dt>
               <dd>
-                <Quantity text={formatFigureLine(figure, { value })} />
+                <Quantity text={evidenceText(value, unit)} />
               </dd>
             </div>
           ))}
@@ -62,7 +64,7 @@ function FindingView({ finding, record }: { finding: Finding; record: ServedReco
 function EvidenceLink({ finding, record }: { finding: Finding; record: ServedRecord }) {
   const [params] = useSearchParams();
   const place = placeOfFinding(record, finding);
-  if (!place) return null;
+  if (place === null) return null;
   const to = { search: partSearch(params, place.part), hash: place.figure ? `#figure-${place.figure}` : '' };
   return (
     <p>
@@ -71,10 +73,17 @@ function EvidenceLink({ finding, record }: { finding: Finding; record: ServedRec
   );
 }
 
+/** Decibels to a tenth; other units to three digits. */
+function evidenceText(value: number, unit: string): string {
+  const decimals = unit.startsWith('dB') ? 1 : Math.max(0, decimalsForSignificant(value, 3));
+  return withUnit(formatNumber(value, { decimals }), unit);
+}
+
 /** "left, negative half, from -2.4 dBFS played" */
-function whereWords({ channel, half, fromStimulusDbfs }: Finding): string {
+function whereWords({ channel, half, fromStimulusDbfs, summary }: Finding): string {
+  const isNamed = channel === null || summary.toLowerCase().includes(channelName(channel));
   return [
-    channel === null ? null : channelName(channel),
+    isNamed ? null : channelName(channel),
     half === null ? null : `${half} half`,
     fromStimulusDbfs === null ? null : `from ${formatLevel(fromStimulusDbfs)} played`,
   ]

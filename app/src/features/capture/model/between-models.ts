@@ -12,6 +12,8 @@ const LEAKS = [
   { name: 'rightToLeft', words: 'right into left', slot: 2 },
 ] as const;
 
+const BALANCE_NAME = 'right less left';
+
 export const SEPARATION_TRACES: readonly string[] = ['leftToRight', 'rightToLeft', 'balance'];
 
 function betweenTrace(traces: readonly ReadTrace[], name: string) {
@@ -39,6 +41,7 @@ export function separationModel(traces: readonly ReadTrace[]): ChartModel {
     x: separationAxis(traces),
     y: { quantity: 'Separation', unit: 'dB', scale: 'linear', min: Math.min(0, min), max },
     traces: drawn,
+    labelRoom: [BALANCE_NAME],
   };
 }
 
@@ -56,9 +59,10 @@ export function balanceModel(traces: readonly ReadTrace[]): ChartModel {
     },
     traces:
       trace && trace.x.length > 0
-        ? [{ id: 'balance', name: 'right less left', kind: 'curve', slot: 1, x: trace.x, y: trace.y }]
+        ? [{ id: 'balance', name: BALANCE_NAME, kind: 'curve', slot: 1, x: trace.x, y: trace.y }]
         : [],
     hasZeroLine: true,
+    labelRoom: LEAKS.map(({ words }) => words),
   };
 }
 

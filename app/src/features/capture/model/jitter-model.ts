@@ -46,6 +46,8 @@ export function jitterModel(body: ServedBody, traces: readonly ReadTrace[], reac
       unit: 'dBr',
       scale: 'linear',
       ...levelRange(traces.map(({ trace }) => trace)),
+      // The tone itself is the zero; a window's ripple over it is no reason for another 20 dB.
+      max: 0,
     },
     traces: traces.map(({ channel, trace }) => ({
       id: channel,

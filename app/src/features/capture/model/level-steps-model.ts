@@ -87,8 +87,14 @@ export function deviationModel(parts: LevelStepsParts): ChartModel {
       { side: 'below', x: [x.min, x.max], y: [-LINEAR_WITHIN_DB, -LINEAR_WITHIN_DB], words: '' },
     ],
     hasZeroLine: true,
+    labelRoom: labelRoom(parts.body),
     notes: deviationNotes(traces),
   };
+}
+
+/** The longest name that either chart may carry. */
+function labelRoom({ channels }: ServedBody): string[] {
+  return channels.map(({ channel }) => `${channelName(channel)}, residual`);
 }
 
 /** The top step's deviation in words, of the channel in which it is greatest. */
@@ -130,19 +136,19 @@ const ADDED: Record<AddedAs, { wanted: readonly Wanted[]; quantity: string; unit
 export function addedModel(parts: LevelStepsParts, as: AddedAs): ChartModel {
   const { wanted, quantity, unit } = ADDED[as];
   const traces = curves(parts, wanted);
+  const inset = topInset(traces);
+  const range = stepRange(
+    traces.map(({ y }) => y),
+    RATIO_STEP_DB,
+  );
+  // One step more at the foot keeps a corner free for the inset.
+  const min = inset ? range.min - RATIO_STEP_DB : range.min;
   return {
     x: sharedAxis(parts),
-    y: {
-      quantity,
-      unit,
-      scale: 'linear',
-      ...stepRange(
-        traces.map(({ y }) => y),
-        RATIO_STEP_DB,
-      ),
-    },
+    y: { quantity, unit, scale: 'linear', min, max: range.max },
     traces,
-    inset: topInset(traces),
+    labelRoom: labelRoom(parts.body),
+    inset,
   };
 }
 

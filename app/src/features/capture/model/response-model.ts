@@ -57,6 +57,13 @@ export function fittingSpan(traces: readonly Pick<ReadTrace, 'trace'>[]): Respon
   return RESPONSE_SPANS.find((span) => span !== 'full' && Number(span) >= greatest) ?? 'full';
 }
 
+/** All of a response, out to steps that suit how far it falls. */
+function wholeRange(traces: readonly TraceModel[]) {
+  const levels = traces.map(({ y }) => y);
+  const { min, max } = extentOf(levels) ?? { min: -1, max: 1 };
+  return stepRange(levels, max - min > 40 ? 10 : max - min > 10 ? 5 : 1);
+}
+
 /** Level against 1 kHz over frequency. */
 export function responseModel(
   parts: CurvesOver,
@@ -64,13 +71,7 @@ export function responseModel(
   quantity = 'Level against 1 kHz',
 ): ChartModel {
   const traces = channelCurves(parts);
-  const range =
-    span === 'full'
-      ? stepRange(
-          traces.map(({ y }) => y),
-          10,
-        )
-      : { min: -Number(span), max: Number(span) };
+  const range = span === 'full' ? wholeRange(traces) : { min: -Number(span), max: Number(span) };
   return {
     x: frequencyAxis(traces.map(({ x }) => x)),
     y: { quantity, unit: 'dB', scale: 'linear', ...range, isSigned: true },

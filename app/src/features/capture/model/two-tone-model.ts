@@ -1,11 +1,6 @@
 import type { ChartModel, HarmonicMark } from '@/components/charts/chart-model';
 import { slotOf } from '@/components/charts/chart-model';
-import {
-  levelRange,
-  peakNear,
-  type SpectrumChannel,
-  spectrumModel,
-} from '@/components/charts/spectrum-model';
+import { peakNear, type SpectrumChannel, spectrumModel } from '@/components/charts/spectrum-model';
 import { channelName } from '@/lib/capture-words';
 import type { ServedBody } from '../api/record-queries';
 import { productName } from './product-name';
@@ -42,8 +37,8 @@ export function usualTwoToneAxis({ channels }: Pick<ServedBody, 'channels'>): Tw
 }
 
 const HIGHEST_SHOWN_HZ = 24_000;
-/** Products to the third order lie twice the low tone away; once more for air. */
-const AROUND_LOW_TONES = 3;
+/** Products to the fourth order lie three low tones away; a half more for air. */
+const AROUND_LOW_TONES = 3.5;
 
 /** The spectrum of two tones, each product with its name over the frame and a disc on its peak. */
 export function twoToneModel(body: ServedBody, traces: readonly ReadTrace[], axis: TwoToneAxis): ChartModel {
@@ -96,12 +91,4 @@ function productMarks(body: ServedBody, traces: readonly ReadTrace[]): HarmonicM
       },
     ];
   });
-}
-
-/** Two spectra that stand over each other share their levels, so that they can be compared by eye. */
-export function sharedLevels(models: readonly ChartModel[]): ChartModel[] {
-  const { min, max } = levelRange(
-    models.flatMap(({ traces }) => traces.map(({ y }) => ({ y: Float64Array.from(y) }))),
-  );
-  return models.map((model) => ({ ...model, y: { ...model.y, min, max } }));
 }

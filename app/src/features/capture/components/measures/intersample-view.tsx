@@ -9,14 +9,14 @@ export function IntersampleView({ view }: { view: BodyView }) {
         view={view}
         title="Over full scale"
         sub="samples at 0 dBFS, the wave between them at +3.01 dBTP"
-        heightPx={300}
+        heightPx={340}
       />
       <SpectrumView
         view={view}
         name="spectrumLower"
         title="With room for it"
         sub="the same tone 6 dB lower"
-        heightPx={300}
+        heightPx={340}
       />
     </>
   );

@@ -65,7 +65,7 @@ function FollowsCharts({ view, against, as }: { view: BodyView; against: LevelAg
         build={buildDeviation}
         stem="deviation"
         title="Deviation from linear"
-        sub="against the step at \u221220 dBFS"
+        sub="against the step at −20 dBFS"
         heightPx={214}
         emptyWords="No step holds the tone."
       />
@@ -75,7 +75,7 @@ function FollowsCharts({ view, against, as }: { view: BodyView; against: LevelAg
         build={buildAdded}
         stem="distortion-against-level"
         title="Distortion and noise"
-        sub="THD is drawn where the harmonics stand clear of the noise"
+        sub="THD where it is clear of the noise"
         heightPx={392}
         emptyWords="No step holds the tone."
       />

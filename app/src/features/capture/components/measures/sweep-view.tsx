@@ -106,7 +106,7 @@ function HarmonicsChart({ view, channel }: { view: BodyView; channel: string }) 
       title="What is added"
       sub={`${channelName(channel)}, against the tone that makes it`}
       heightPx={392}
-      emptyWords="No harmonic of this channel lies within the recording\u2019s band."
+      emptyWords="No harmonic of this channel lies within the recording’s band."
     />
   );
 }

@@ -18,8 +18,8 @@ export function TwoToneStepsView({ view }: { view: BodyView }) {
   return (
     <>
       <ViewSentence>
-        Show the products, peak levels against <LevelSlot body={body} value={against} onChange={setAgainst} />
-        .
+        Show the products, levels (the peak as that of a sine) against{' '}
+        <LevelSlot body={body} value={against} onChange={setAgainst} />.
       </ViewSentence>
       <TraceChart
         view={view}
@@ -27,7 +27,7 @@ export function TwoToneStepsView({ view }: { view: BodyView }) {
         build={build}
         stem="products-against-level"
         title="Products against level"
-        sub="peak of the two tones as that of a sine; drawn where they stand clear of the noise"
+        sub="where they are clear of the noise"
         heightPx={400}
         emptyWords="No product stands clear of the noise at any level."
       />

@@ -1,6 +1,5 @@
 import { useCallback, useState } from 'react';
 import { SlotSelect } from '@/components/sentence/slot';
-import { formatPoints } from '@/lib/format/quantity';
 import type { ReadTrace } from '../../model/read-trace';
 import { twoToneModel, usualTwoToneAxis } from '../../model/two-tone-model';
 import type { TwoToneAxis } from '../../model/two-tone-model';
@@ -31,7 +30,7 @@ export function TwoToneView({ view }: { view: BodyView }) {
         build={build}
         stem="two-tones"
         title="What the tones make of each other"
-        sub={`${formatPoints(body.settings.fftLength)} points, f1 the low tone, f2 the high one`}
+        sub="f1 the low tone, f2 the high one"
         heightPx={400}
       />
     </>

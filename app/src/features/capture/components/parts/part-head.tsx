@@ -1,5 +1,5 @@
 import { useEffect, useRef } from 'react';
-import { Link, useSearchParams } from 'react-router-dom';
+import { Link, useLocation, useSearchParams } from 'react-router-dom';
 import { formatDuration } from '@/lib/format/quantity';
 import type { ServedBody } from '../../api/record-queries';
 import { partSearch } from '../../model/part-address';
@@ -16,8 +16,11 @@ interface PartHeadProps {
 export function PartHead({ parts, number }: PartHeadProps) {
   const [params] = useSearchParams();
   const headingRef = useRef<HTMLHeadingElement>(null);
-  // The page stays the same one: who opened a part by key or voice is taken to it.
-  useEffect(() => headingRef.current?.focus(), [number]);
+  const { key } = useLocation();
+  // The page stays the same one: who opened a part by key or voice is taken to it. A page just loaded is not moved.
+  useEffect(() => {
+    if (key !== 'default') headingRef.current?.focus();
+  }, [number, key]);
   const body = parts[number - 1];
   if (!body) return null;
   const { title, detail } = partTitle(body);
