@@ -1,9 +1,15 @@
 import { describe, expect, it } from 'vitest';
+import { getMeasure } from '../measures/registry.js';
+import { analyseSamples } from '../measures/testing/analyse-samples.js';
+import { resampleByFft } from '../measures/testing/resample.js';
 import type { PracticeStage } from '../practice/device.js';
 import { PRACTICE_DEVICES } from '../practice/practice-devices.js';
+import { pass } from '../practice/testing/pass.js';
 import { parseRecord } from '../record/parse-record.js';
 import type { Finding } from '../record/record.js';
 import { toRecordJson } from '../record/to-record-json.js';
+import { createStimulus } from '../stimulus/create-stimulus.js';
+import { fitSine } from '../tone/fit-sine.js';
 import { clipForDeviation, oneSidedFundamental, twoSidedFundamental } from './clip-forms.js';
 import { proposeFindings } from './propose-findings.js';
 import { findIn, type PlayOptions } from './testing/find-in.js';
@@ -106,8 +112,6 @@ describe('a clipped half', () => {
     const { findings } = await findIn(stages, steps);
     const finding = only(findings, 'one-sided-clipping');
     // The truth by single tones 0.1 dB apart through the same stage: the first whose fundamental falls 0.1 dB short.
-    const { pass } = await import('../practice/testing/pass.js');
-    const { fitSine } = await import('../tone/fit-sine.js');
     let truth = 0;
     for (let level = -6; level <= 0; level += 0.05) {
       const tone = Float64Array.from(
@@ -225,6 +229,45 @@ describe('findings of a whole programme', () => {
       expect(finding.confirmBy.length).toBeGreaterThan(20);
       for (const { value } of finding.evidence) expect(Number.isFinite(value)).toBe(true);
     }
+  });
+
+  it('exchanged channels are named', async () => {
+    const { source } = createStimulus('separation', { sampleRateHz: 48_000, bitsPerSample: 24 });
+    const [left, right] = pass(await source.read(0, source.frameCount), 48_000, [noise(-105)]);
+    const record = await analyseSamples(getMeasure('separation'), [right, left], 48_000);
+    expect(codesOf(proposeFindings(record))).toEqual(['swapped-channels']);
+  });
+
+  it('a converter without room between the samples is named', async () => {
+    const { source } = createStimulus('intersample-tone', { sampleRateHz: 48_000, bitsPerSample: 24 });
+    const heard = resampleByFft((await source.read(0, source.frameCount))[0], 48_000, 96_000);
+    const channels = pass([heard, heard], 96_000, [
+      { kind: 'clip', channel: 'left', positive: 1.1, negative: 1.1 },
+      { kind: 'gain', channel: 'both', gainDb: -6 },
+      noise(-110),
+    ]);
+    const record = await analyseSamples(getMeasure('intersample'), channels, 96_000);
+    expect(only(proposeFindings(record), 'intersample-overload')).toMatchObject({ channel: 'left' });
+  });
+
+  it('a filter that leaves images is named', async () => {
+    const { source } = createStimulus('white-noise', { sampleRateHz: 48_000, bitsPerSample: 24 });
+    const [played] = await source.read(0, source.frameCount);
+    // Every sample held for two: the plainest converter there is, images and all (sin x / x).
+    const held = Float64Array.from({ length: 2 * played.length }, (_, n) => played[n >> 1]);
+    const record = await analyseSamples(getMeasure('filter'), [held, held], 96_000, {
+      descriptor: createStimulus('white-noise', { sampleRateHz: 48_000, bitsPerSample: 24 }).describe(''),
+    });
+    expect(proposeFindings(record).map(({ code }) => code)).toContain('image-products');
+  });
+
+  it('a recording whose word length sets its noise is a note', async () => {
+    const { findings } = await findIn([{ kind: 'quantise', channel: 'both', bits: 16, dither: 'tpdf' }], {
+      bits: 16,
+    });
+    expect(
+      findings.filter(({ code }) => code === 'recording-noise-limited').map(({ severity }) => severity),
+    ).toEqual(['note', 'note']);
   });
 
   // Common practice, no source: the inexpensive converter, faulty and mended.

@@ -1,4 +1,11 @@
-import type { BenchRecord, ChannelResult, MeasureId, RecordBody, Trace } from '../record/record.js';
+import type {
+  BenchRecord,
+  ChannelResult,
+  Component,
+  MeasureId,
+  RecordBody,
+  Trace,
+} from '../record/record.js';
 
 /** A record as the rules look at it: its own measure, or a programme's parts. */
 export interface RecordView {
@@ -42,6 +49,22 @@ export function viewRecord(record: BenchRecord): RecordView {
 export function numberIn(figures: ChannelResult['figures'], key: string): number | null {
   const value = figures[key];
   return typeof value === 'number' ? value : null;
+}
+
+/** The strongest of some lines whose place and level are known; null without one. */
+export function strongestLine(
+  lines: readonly Component[],
+  placeKey: string,
+  levelKey: string,
+): { readonly hz: number; readonly level: number } | null {
+  let best: { hz: number; level: number } | null = null;
+  for (const line of lines) {
+    const [hz, level] = [line[placeKey], line[levelKey]];
+    if (typeof hz === 'number' && typeof level === 'number' && level > (best?.level ?? -Infinity)) {
+      best = { hz, level };
+    }
+  }
+  return best;
 }
 
 export interface Point {

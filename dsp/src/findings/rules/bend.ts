@@ -39,10 +39,10 @@ export function findBend(result: ChannelResult): Bend | null {
     return { kind: 'compression', half: null, fromDbfs: softKnee(deviation) ?? top.x, isHard: false, top };
   }
   const half = heldHalf(result, top.x);
-  const form = half === null ? twoSidedFundamental : oneSidedFundamental;
-  const hard = hardKnee(deviation, form);
+  const isOneSided = half !== null || hasEvenHarmonics(result, top.x);
+  const hard = hardKnee(deviation, isOneSided ? oneSidedFundamental : twoSidedFundamental);
   return {
-    kind: half === null ? 'symmetric' : 'one-sided',
+    kind: isOneSided ? 'one-sided' : 'symmetric',
     half,
     fromDbfs: hard ?? softKnee(deviation) ?? top.x,
     isHard: hard !== null,
@@ -64,6 +64,15 @@ function heldHalf(result: ChannelResult, topDbfs: number): 'positive' | 'negativ
   const usual = reference.length === 0 ? 0 : (difference(reference[reference.length - 1]) ?? 0);
   if (at === null || Math.abs(at - usual) < ASYMMETRY_DB) return null;
   return at < usual ? 'positive' : 'negative';
+}
+
+/** Within this of the third, the second harmonic says that the halves differ. */
+const EVEN_DB = 10;
+
+/** Tells one half from both where the peaks themselves are not known. */
+function hasEvenHarmonics(result: ChannelResult, topDbfs: number): boolean {
+  const [second, third] = ['harmonic2', 'harmonic3'].map((name) => pointAt(pointsOf(result, name), topDbfs));
+  return second !== null && second.y > (third?.y ?? -Infinity) - EVEN_DB;
 }
 
 /** The knee of a hard clip from every step that tells it, weighted by how much it deviates; null where they disagree. */

@@ -7,25 +7,23 @@ const CONFIRM_CABLES =
 
 /** Polarity of the whole chain, from the sweep or the marks. */
 export function polarityRule(view: RecordView): Finding[] {
-  const finding = (channel: string | null, summary: string, figure: string): Finding =>
+  const finding = (summary: string, figure: string): Finding =>
     makeFinding({
       code: 'inverted-polarity',
       severity: 'caution',
-      channel,
+      channel: null,
       summary,
-      evidence: [proof(figure, 180, 'deg')],
+      evidence: [proof(figure, -1, '')],
       confirmBy: `Measure the recorder alone through a cable: it may be the one that inverts. ${CONFIRM_CABLES}`,
     });
   const one = view
     .bodies('separation')
     .some(({ between }) => between.figures['interchannelPolarity'] === 'inverted');
-  if (one)
-    return [finding('right', 'One channel is inverted against the other.', 'phase between the channels')];
+  if (one) return [finding('One channel is inverted against the other.', 'phase between the channels')];
   const stimulus = view.record.stimulus ?? view.bodies('sweep').at(0)?.stimulus ?? null;
   return stimulus?.polarity === 'inverted'
     ? [
         finding(
-          null,
           'The chain inverts: what goes up in the file comes down in the recording.',
           'phase at the output',
         ),
@@ -77,7 +75,9 @@ const BALANCE_DB = { note: 0.25, caution: 0.5, fault: 1.5 } as const;
 
 /** One channel louder than the other. */
 export function balanceRule(view: RecordView): Finding[] {
-  return view.bodies('separation').flatMap(({ between }): Finding[] => {
+  return view.bodies('separation').flatMap(({ between, warnings }): Finding[] => {
+    // Of exchanged channels each turn's own channel holds next to nothing.
+    if (warnings.some(({ code }) => code === 'channels-swapped')) return [];
     const balance = numberIn(between.figures, 'balanceDb');
     if (balance === null || Math.abs(balance) < BALANCE_DB.note || Math.abs(balance) > 40) return [];
     const size = Math.abs(balance);

@@ -25,13 +25,16 @@ export function clippingRule(view: RecordView): Finding[] {
 }
 
 function describe(view: RecordView, { channel, result }: ViewedChannel, bend: Bend): Finding {
-  const { kind, half, fromDbfs, top } = bend;
+  const { kind, fromDbfs, top } = bend;
+  // Where the steps can't tell which half it is, the single tone may.
+  const half = bend.half ?? (kind === 'one-sided' ? halfOfTone(view, channel) : null);
   const from = rounded(fromDbfs, kind === 'compression' ? 1 : 2);
   const name = channelWord(channel);
   const evidence = [
     proof(`deviation at ${rounded(top.x, 1)} dBFS`, top.y, 'dB'),
     ...residualProof(result, fromDbfs),
     ...productProof(view, channel, fromDbfs),
+    ...waveProof(view, channel),
   ];
   const how = bend.isHard ? 'is cut off' : 'gives way';
   if (kind === 'compression') {
@@ -46,7 +49,7 @@ function describe(view: RecordView, { channel, result }: ViewedChannel, bend: Be
     });
   }
   const severity = fromDbfs < HARMLESS_DBFS ? 'fault' : 'caution';
-  if (half === null) {
+  if (kind === 'symmetric') {
     return makeFinding({
       code: 'symmetric-clipping',
       severity,
@@ -63,7 +66,7 @@ function describe(view: RecordView, { channel, result }: ViewedChannel, bend: Be
     channel,
     half,
     fromStimulusDbfs: fromDbfs,
-    summary: `${name} ${how} on its ${half} half from ${from} dBFS up; the other half stays whole.`,
+    summary: `${name} ${how} on ${half === null ? 'one' : `its ${half}`} half from ${from} dBFS up; the other half stays whole.`,
     evidence,
     confirmBy: CONFIRM_CLIPPING,
   });
@@ -78,6 +81,22 @@ function residualProof(result: ViewedChannel['result'], kneeDbfs: number): Findi
   below.sort((one, other) => one - other);
   const rise = top.y - below[below.length >> 1];
   return rise > JUMP_DB ? [proof('rise of the residual above the knee', rise, 'dB')] : [];
+}
+
+function halfOfTone(view: RecordView, channel: string): Finding['half'] {
+  const tone = view.channels('tone').find((viewed) => viewed.channel === channel);
+  return tone === undefined ? null : (heldHalfOfWave(tone.result)?.half ?? null);
+}
+
+/** The same crest held back in the single tone. */
+function waveProof(view: RecordView, channel: string): Finding['evidence'] {
+  return view
+    .channels('tone')
+    .filter((viewed) => viewed.channel === channel)
+    .flatMap(({ result }) => {
+      const held = heldHalfOfWave(result);
+      return held === null ? [] : [proof('residual of the single tone', held.depthDb, 'dBr')];
+    });
 }
 
 /** How far the products of two tones jump above the knee. */
@@ -122,7 +141,7 @@ function fromWave(view: RecordView, told: ReadonlySet<string>): Finding[] {
         severity: thd > -50 ? 'fault' : 'caution',
         channel,
         half: held.half,
-        summary: `${channelWord(channel)} is held back ${where}${level === null ? '' : ` at ${rounded(level, 1)} dBFS`}: even and odd harmonics stand together at ${rounded(thd, 1)} dB.`,
+        summary: `${channelWord(channel)} is held back ${where}${level === null ? '' : ` at ${rounded(level, 1)} dBFS`}: ${held.half === null ? 'odd' : 'even and odd'} harmonics stand at ${rounded(thd, 1)} dB in all.`,
         evidence: [proof('THD', thd, 'dB'), ...harmonicProof(result, 2), ...harmonicProof(result, 3)],
         confirmBy: `Play level steps: they tell from which level on. ${CONFIRM_CLIPPING}`,
       }),

@@ -5,7 +5,8 @@ import { channelWord, makeFinding, proof, rounded } from '../words.js';
 const BETWEEN = { high: -10, low: -45 } as const;
 /** In absolute level a bend of the crest's third harmonic falls with the level; that of a dead zone stays within this. */
 const STEADY_DB = 8;
-const LEAST_POINTS = 5;
+const LEAST_POINTS = 3;
+const LEAST_SPAN_DB = 25;
 /** Of the third harmonic at -20 dBFS (common practice, no source). */
 const LEAST_THIRD_DB = -95;
 
@@ -13,7 +14,7 @@ const LEAST_THIRD_DB = -95;
 export function crossoverRule(view: RecordView): Finding[] {
   return view.channels('level-steps').flatMap(({ channel, result }): Finding[] => {
     const third = pointsOf(result, 'harmonic3').filter(({ x }) => x <= BETWEEN.high && x >= BETWEEN.low);
-    if (third.length < LEAST_POINTS) return [];
+    if (third.length < LEAST_POINTS || third[third.length - 1].x - third[0].x < LEAST_SPAN_DB) return [];
     const absolute = third.map(({ x, y }) => x + y);
     const spread = Math.max(...absolute) - Math.min(...absolute);
     const at20 = nearest(third, -20);
@@ -51,10 +52,11 @@ function nearest(points: readonly Point[], x: number): Point {
 }
 
 const BUSY = { high: -40, low: -80 } as const;
-const QUIET_BELOW_DBFS = -104;
+/** Half of the least step of 16 bits is a tone of -96.3 dBFS. */
+const QUIET_BELOW_DBFS = -98;
 /** Noise that falls by so much once the tone is too small to move a code is the codes' own. */
 const LEAST_FALL_DB = 5;
-const LEAST_HARMONICS = 4;
+const LEAST_HARMONICS = 2;
 
 /** Rounding without dither: what is left beside the tone comes and goes with it. */
 export function truncationRule(view: RecordView): Finding[] {
@@ -62,7 +64,7 @@ export function truncationRule(view: RecordView): Finding[] {
     const noise = pointsOf(result, 'residual');
     const busy = noise.filter(({ x }) => x <= BUSY.high && x >= BUSY.low).map(({ y }) => y);
     const quiet = noise.filter(({ x }) => x < QUIET_BELOW_DBFS).map(({ y }) => y);
-    if (busy.length < 3 || quiet.length < 2) return [];
+    if (busy.length < 3 || quiet.length === 0) return [];
     const fall = median(busy) - median(quiet);
     const harmonics = pointsOf(result, 'thd').filter(({ x, y }) => x <= -50 && x >= -95 && y > -60);
     if (fall < LEAST_FALL_DB || harmonics.length < LEAST_HARMONICS) return [];
@@ -74,7 +76,7 @@ export function truncationRule(view: RecordView): Finding[] {
         summary: `${channelWord(channel)} rounds without dither: what stands beside the tone at low levels falls by ${rounded(fall, 0)} dB once the tone is too small to move a code.`,
         evidence: [
           proof('residual from -40 to -80 dBFS', median(busy), 'dBFS'),
-          proof('residual below -104 dBFS', median(quiet), 'dBFS'),
+          proof('residual below -98 dBFS', median(quiet), 'dBFS'),
         ],
         confirmBy:
           'Play the same steps as a file of 24 bits with every volume control, equaliser and resampler off: what is left of it is the player’s own word length.',

@@ -1,5 +1,5 @@
-import type { Finding } from '../../record/record.js';
-import { numberIn, type RecordView } from '../record-view.js';
+import type { FigureLimit, Finding } from '../../record/record.js';
+import { numberIn, strongestLine, type RecordView } from '../record-view.js';
 import { channelWord, makeFinding, proof, rounded } from '../words.js';
 
 /** Mains hum in dBFS (common practice, no source): heard as a hum beside quiet music from about -80 on. */
@@ -49,10 +49,7 @@ export function mainsHumRule(view: RecordView): Finding[] {
 export function frameNoiseRule(view: RecordView): Finding[] {
   return view.channels('idle').flatMap(({ channel, result }): Finding[] => {
     const lines = result.components.filter(({ kind }) => kind === 'frame');
-    const strongest = lines.reduce<{ hz: number; level: number } | null>((best, line) => {
-      const level = Number(line['levelDbfs']);
-      return best === null || level > best.level ? { hz: Number(line['frequencyHz']), level } : best;
-    }, null);
+    const strongest = strongestLine(lines, 'frequencyHz', 'levelDbfs');
     const severity = strongest === null ? null : severityOf(strongest.level, FRAME);
     if (strongest === null || severity === null) return [];
     return [
@@ -95,20 +92,25 @@ export function dcOffsetRule(view: RecordView): Finding[] {
   });
 }
 
+/** Nearer than this to the rig's own, a figure shows the rig. */
+const RIG_DECIDES_DB = 3;
+
 /** The recording, not the unit, sets the noise. */
 export function noiseLimitedRule(view: RecordView): Finding[] {
-  const limited = view.channels('idle').filter(({ result }) => {
-    const by = result.limits['noiseDbfs']?.by;
-    return by === 'quantisation' || (by === 'rig' && (result.limits['noiseDbfs']?.marginDb ?? 99) < 3);
+  return view.channels('idle').flatMap(({ channel, result }): Finding[] => {
+    const limit = result.limits['noiseDbfs'] as FigureLimit | undefined;
+    const isRig = limit?.by === 'rig' && (limit.marginDb ?? Infinity) < RIG_DECIDES_DB;
+    if (limit === undefined || (limit.by !== 'quantisation' && !isRig)) return [];
+    const noise = numberIn(result.figures, 'noiseDbfs') ?? limit.below;
+    return [
+      makeFinding({
+        code: 'recording-noise-limited',
+        severity: 'note',
+        channel,
+        summary: `${channelWord(channel)}’s noise figures are the recording’s: its ${isRig ? 'rig' : 'word length'} is what they show.`,
+        evidence: noise === null ? [] : [proof('noise', noise, 'dBFS')],
+        confirmBy: 'Record with more bits and more gain at the recorder’s input, and compare.',
+      }),
+    ];
   });
-  return limited.map(({ channel, result }) =>
-    makeFinding({
-      code: 'recording-noise-limited',
-      severity: 'note',
-      channel,
-      summary: `${channelWord(channel)}’s noise figures are the recording’s: its ${result.limits['noiseDbfs']?.by === 'rig' ? 'rig' : 'word length'} is what they show.`,
-      evidence: [proof('noise', numberIn(result.figures, 'noiseDbfs') ?? 0, 'dBFS')],
-      confirmBy: 'Record with more bits and more gain at the recorder’s input, and compare.',
-    }),
-  );
 }

@@ -15,7 +15,11 @@ export function overloadRule(view: RecordView): Finding[] {
       channel,
       summary: `${channel === null ? 'The recording' : channelWord(channel)} is clipped by the recorder itself: nothing can be said of the unit at these levels.`,
       evidence: [
-        proof('measures that met it', warnings.filter((warning) => warning.channel === channel).length, ''),
+        proof(
+          'measures in which it shows',
+          warnings.filter((warning) => warning.channel === channel).length,
+          '',
+        ),
       ],
       confirmBy: 'Lower the recorder’s input gain by 6 dB and record again.',
     }),

@@ -1,5 +1,5 @@
 import type { Finding } from '../../record/record.js';
-import { numberIn, type RecordView } from '../record-view.js';
+import { numberIn, pointsOf, type Point, type RecordView } from '../record-view.js';
 import { channelWord, makeFinding, proof, rounded } from '../words.js';
 
 /** Against 1 kHz, dB (common practice, no source). */
@@ -7,14 +7,16 @@ const ROLL_OFF = { note: -0.6, caution: -1.2, fault: -3 } as const;
 
 /** A response that ends inside the audible band. */
 export function rollOffRule(view: RecordView): Finding[] {
-  return view.channels('sweep').flatMap(({ channel, result }) =>
+  // Many tones tell as much where there is no sweep.
+  const sweeps = view.channels('sweep');
+  return (sweeps.length > 0 ? sweeps : view.channels('multitone')).flatMap(({ channel, result }) =>
     (
       [
-        ['levelAt20HzDb', '20 Hz', 'bass'],
-        ['levelAt20kHzDb', '20 kHz', 'treble'],
+        ['levelAt20HzDb', '20 Hz', 'bass', 20],
+        ['levelAt20kHzDb', '20 kHz', 'treble', 20_000],
       ] as const
-    ).flatMap(([key, place, word]): Finding[] => {
-      const level = numberIn(result.figures, key);
+    ).flatMap(([key, place, word, hz]): Finding[] => {
+      const level = numberIn(result.figures, key) ?? nearestLevel(pointsOf(result, 'response'), hz);
       if (level === null || level > ROLL_OFF.note) return [];
       const corner = numberIn(result.figures, word === 'bass' ? 'minus3DbLowHz' : 'minus3DbHighHz');
       return [
@@ -33,6 +35,11 @@ export function rollOffRule(view: RecordView): Finding[] {
       ];
     }),
   );
+}
+
+/** Level of the point next to a frequency, within a hundredth of it. */
+function nearestLevel(points: readonly Point[], hz: number): number | null {
+  return points.find(({ x }) => Math.abs(x / hz - 1) < 0.01)?.y ?? null;
 }
 
 /** Image below the band it mirrors, dB (common practice, no source). */

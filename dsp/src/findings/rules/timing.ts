@@ -1,5 +1,5 @@
 import type { Finding } from '../../record/record.js';
-import { numberIn, type RecordView } from '../record-view.js';
+import { numberIn, strongestLine, type RecordView } from '../record-view.js';
 import { channelWord, makeFinding, proof, rounded } from '../words.js';
 
 /** Peak to peak, ps (common practice, no source): 500 ps put sidebands at -100 dB beside 12 kHz. */
@@ -10,12 +10,8 @@ export function jitterRule(view: RecordView): Finding[] {
   return view.channels('jitter').flatMap(({ channel, result }): Finding[] => {
     const ps = numberIn(result.figures, 'jitterPeakToPeakPs');
     if (ps === null || ps < JITTER_PS.note) return [];
-    const pair = result.components
-      .filter(({ kind }) => kind !== 'amplitude')
-      .reduce<{ hz: number; level: number } | null>((best, line) => {
-        const level = Number(line['levelDbr']);
-        return best === null || level > best.level ? { hz: Number(line['offsetHz']), level } : best;
-      }, null);
+    const moving = result.components.filter(({ kind }) => kind !== 'amplitude');
+    const pair = strongestLine(moving, 'offsetHz', 'levelDbr');
     return [
       makeFinding({
         code: 'jitter',
@@ -52,7 +48,9 @@ export function intersampleRule(view: RecordView): Finding[] {
         code: 'intersample-overload',
         severity: loss !== null && loss < -FAULTY_LOSS_DB ? 'fault' : 'caution',
         channel,
-        summary: `${channelWord(channel)} has no room for waves that go beyond their samples: it loses ${rounded(-(loss ?? 0), 2)} dB of a tone 3 dB above full scale.`,
+        summary: `${channelWord(channel)} has no room for waves that go beyond their samples: it ${
+          isLost ? `loses ${rounded(-loss, 2)} dB of` : `adds ${rounded(thd ?? 0, 0)} dB of harmonics to`
+        } a tone 3 dB above full scale.`,
         evidence: [
           ...(loss === null ? [] : [proof('level error', loss, 'dB')]),
           ...(thd === null ? [] : [proof('THD', thd, 'dB')]),

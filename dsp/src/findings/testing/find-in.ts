@@ -10,12 +10,14 @@ import { proposeFindings } from '../propose-findings.js';
 export interface PlayOptions extends Partial<StimulusOptions> {
   readonly name?: string;
   readonly measure?: MeasureId;
+  /** Word length that the recording claims; 24 unless given. */
+  readonly bits?: number;
 }
 
 /** Plays a stimulus through stages of a device, measures the recording and proposes findings. */
 export async function findIn(
   stages: readonly PracticeStage[],
-  { name = 'programme', measure = 'programme', ...options }: PlayOptions = {},
+  { name = 'programme', measure = 'programme', bits = 24, ...options }: PlayOptions = {},
 ): Promise<{ record: BenchRecord; findings: Finding[] }> {
   const sampleRateHz = options.sampleRateHz ?? 48_000;
   const { source } = createStimulus(name, {
@@ -25,6 +27,6 @@ export async function findIn(
     ...options,
   });
   const channels = pass(await source.read(0, source.frameCount), sampleRateHz, stages);
-  const record = await analyseSamples(getMeasure(measure), channels, sampleRateHz, { bits: 24 });
+  const record = await analyseSamples(getMeasure(measure), channels, sampleRateHz, { bits });
   return { record, findings: proposeFindings(record) };
 }
