@@ -73,18 +73,33 @@ export function figureRows(recordId: string, record: BenchRecord): Omit<RecordFi
   );
 }
 
-/** A small drawing of each channel's first trace: 64 heights from 0 to 1, the highest point of each run. */
-export function sketchOf(record: BenchRecord): number[][] {
-  const channels = record.channels.map(({ traces }) => traces['spectrum'] ?? Object.values(traces)[0]);
-  const drawn = channels.filter((trace) => trace !== undefined);
+/** The trace that a small drawing of a measure shows; the spectrum, else the first there is, of any other. */
+const MAIN_TRACES: Readonly<Record<string, string>> = {
+  'level-steps': 'deviation',
+  sweep: 'response',
+  multitone: 'response',
+  jitter: 'closeIn',
+  filter: 'response',
+};
+
+/**
+ * A small drawing of each channel's main trace: 64 heights from 0 to 1, the highest point of each run. A programme
+ * shows its sweep, else its first part.
+ */
+export function sketchOf(record: RecordBody): number[][] {
+  const main = MAIN_TRACES[record.measure] ?? 'spectrum';
+  const channels = record.channels.map(({ traces }) => traces[main] ?? Object.values(traces)[0]);
+  const drawn = channels.filter((trace) => trace !== undefined && trace.x.length > 0);
   if (drawn.length > 0) return drawn.map(sketchTrace);
   const [shared] = Object.values(record.between.traces);
-  return shared ? [sketchTrace(shared)] : [];
+  if (shared) return [sketchTrace(shared)];
+  const part = record.segments.find(({ measure }) => measure === 'sweep') ?? record.segments[0];
+  return part ? sketchOf(part) : [];
 }
 
 function sketchTrace({ x, y, xUnit, yUnit }: Trace): number[] {
   const heights = new Array<number>(SKETCH_POINTS).fill(-Infinity);
-  const isFrequency = xUnit === 'Hz';
+  const isFrequency = xUnit === 'Hz' && (x[0] ?? 0) >= 0; // close in, distances lie on both sides of zero
   const place = (value: number) => (isFrequency ? Math.log(Math.max(value, 1)) : value);
   const from = place(isFrequency ? Math.max(10, x[0] ?? 0) : (x[0] ?? 0));
   const span = place(x[x.length - 1] ?? 1) - from || 1;

@@ -32,11 +32,18 @@ export function makeOccupancy(drawn: readonly DrawnTrace[], geometry: Geometry):
       const y0 = py[index - 1] ?? NaN;
       const y1 = py[index] ?? NaN;
       if (Number.isNaN(y0) || Number.isNaN(y1)) continue;
-      const from = Math.max(0, Math.floor((px[index - 1] ?? 0) - left));
-      const to = Math.min(columnCount - 1, Math.ceil((px[index] ?? 0) - left));
+      const x0 = (px[index - 1] ?? 0) - left;
+      const x1 = (px[index] ?? 0) - left;
+      const from = Math.max(0, Math.floor(x0));
+      const to = Math.min(columnCount - 1, Math.ceil(x1));
+      // A long slanting stretch takes of each column only what it crosses there.
+      const yAt = (x: number) =>
+        x1 > x0 ? y0 + (y1 - y0) * Math.min(1, Math.max(0, (x - x0) / (x1 - x0))) : y0;
       for (let column = from; column <= to; column += 1) {
-        low[column] = Math.min(low[column] ?? Infinity, y0, y1);
-        high[column] = Math.max(high[column] ?? -Infinity, y0 + below, y1 + below);
+        const ya = x1 - x0 > 2 ? yAt(column - 1) : y0;
+        const yb = x1 - x0 > 2 ? yAt(column + 1) : y1;
+        low[column] = Math.min(low[column] ?? Infinity, ya, yb);
+        high[column] = Math.max(high[column] ?? -Infinity, ya + below, yb + below);
       }
     }
   });

@@ -2,6 +2,7 @@ import { evenRange, extentOf, stepRange } from '@/components/charts/axis-range';
 import type { ChartModel, Slot, TraceModel } from '@/components/charts/chart-model';
 import { formatOrdinal } from '@/lib/format/quantity';
 import type { ServedBody } from '../api/record-queries';
+import { octaveMean } from './octave-mean';
 import { tracesNamed } from './read-trace';
 import type { ReadTrace } from './read-trace';
 import { channelCurves, frequencyAxis } from './response-model';
@@ -55,13 +56,14 @@ export function impulseModel(body: ServedBody, traces: readonly ReadTrace[]): Ch
 const ORDER_SLOTS: Readonly<Record<number, Slot>> = { 2: 1, 3: 3, 4: 4, 5: 5 };
 export const HARMONIC_TRACES: readonly string[] = Object.keys(ORDER_SLOTS).map((order) => `harmonic${order}`);
 
-/** Harmonics 2 to 5 of one channel over the frequency of the tone that makes them. */
+/** Harmonics 2 to 5 of one channel over the frequency of the tone that makes them, in means of a twelfth of an octave. */
 export function harmonicsModel(traces: readonly ReadTrace[], channel: string): ChartModel {
   const drawn = Object.entries(ORDER_SLOTS).flatMap(([order, slot]): TraceModel[] => {
     const found = tracesNamed(traces, `harmonic${order}`).find((one) => one.channel === channel)?.trace;
     if (!found || found.x.length === 0) return [];
     const name = `${formatOrdinal(Number(order))} harmonic`;
-    return [{ id: `harmonic${order}`, name, kind: 'curve', slot, x: found.x, y: found.y }];
+    const mean = octaveMean(found.x, found.y);
+    return [{ id: `harmonic${order}`, name, kind: 'curve', slot, ...mean }];
   });
   return {
     x: { ...frequencyAxis(drawn.map(({ x }) => x)), quantity: 'Frequency of the tone' },

@@ -13,7 +13,7 @@ const NAMES = ['deviation', 'measuredLevel', 'thd', 'thdPlusNoise', 'residual', 
 
 type Question = 'follows' | 'transfer';
 const QUESTIONS = [
-  { value: 'follows', label: 'whether the output follows, and what is added' },
+  { value: 'follows', label: 'whether the output follows' },
   { value: 'transfer', label: 'output against input' },
 ] as const;
 const ADDED_AS = [

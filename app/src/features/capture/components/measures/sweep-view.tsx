@@ -104,7 +104,7 @@ function HarmonicsChart({ view, channel }: { view: BodyView; channel: string }) 
       build={build}
       stem="harmonics-over-frequency"
       title="What is added"
-      sub={`${channelName(channel)}, against the tone that makes it`}
+      sub={`${channelName(channel)}, power mean over twelfths of an octave`}
       heightPx={392}
       emptyWords="No harmonic of this channel lies within the recording’s band."
     />
