@@ -47,7 +47,7 @@ function makeRecord(
         snrDb: null,
         fundamentalFrequencyHz: 997,
         fundamentalLevelDbfs: -1.09,
-        balanceDb: 0.1,
+        oddityDb: 0.1,
       }),
       channel(
         'right',
@@ -68,7 +68,7 @@ describe('the table of figures', () => {
       'fundamentalLevelDbfs',
       'thdDb',
       'snrDb',
-      'balanceDb',
+      'oddityDb',
     ]);
     expect(rows.at(-1)!.cells[1]!.value).toBeUndefined();
   });
