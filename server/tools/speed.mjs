@@ -1,5 +1,5 @@
 // npm run speed: the benchmark. Prints tables, then the same figures as one line of JSON.
-//   npm run speed -- --only fft,tone,programme,large,browser,upload,list
+//   npm run speed -- --only fft,tone,programme,findings,large,browser,upload,list
 import { mkdtempSync, rmSync } from 'node:fs';
 import { cpus, tmpdir } from 'node:os';
 import path from 'node:path';
@@ -19,18 +19,22 @@ async function main() {
   ensureDebian('/usr/bin/python3 -c "import scipy"', ['python3-scipy'], 'the yardstick of the benchmark');
   const { measureFft } = await import('./speed/fft.mjs');
   const { measureLargeTone, measureTone, writeTone } = await import('./speed/tone.mjs');
+  const { measureFindings } = await import('./speed/findings.mjs');
   const { measureProgramme } = await import('./speed/programme.mjs');
   const { measureList, measureUpload, signInAsReviewer } = await import('./speed/archive.mjs');
   const { startService } = await import('./service.mjs');
   const { measureBrowserTone } = await import('./speed/browser.mjs');
 
-  const parts = new Set(chosenParts(['fft', 'tone', 'programme', 'large', 'browser', 'upload', 'list']));
+  const parts = new Set(
+    chosenParts(['fft', 'tone', 'programme', 'findings', 'large', 'browser', 'upload', 'list']),
+  );
   const folder = mkdtempSync(path.join(tmpdir(), 'benchlark-speed-'));
   const figures = { node: process.version, cpu: cpus()[0]?.model, cores: cpus().length };
   try {
     if (parts.has('fft')) figures.fft = await measureFft();
     if (parts.has('tone')) figures.tone = await measureTone(folder);
     if (parts.has('programme')) figures.programme = await measureProgramme(folder);
+    if (parts.has('findings')) figures.findings = await measureFindings();
     const large = path.join(folder, 'large.wav');
     if (['large', 'browser', 'upload', 'list'].some((part) => parts.has(part)))
       await writeTone(large, LARGE_DURATION_S);
