@@ -35,7 +35,7 @@ export function BetweenSection({ record }: { record: ServedBody }) {
   const title = BETWEEN_TITLES[measure] ?? 'Between the channels';
   return (
     <Section title={title}>
-      <FigureTableView table={table} label={title} isWhole />
+      <FigureTableView table={table} label={`Figures: ${title.toLowerCase()}`} isWhole />
     </Section>
   );
 }
