@@ -47,12 +47,13 @@ function assignBins(binCount: number, centres: readonly number[], halfWidth: num
  */
 export function removeLobes(spectrum: PowerSpectrum, frequenciesHz: readonly number[]): LobeRemoval {
   const { binWidthHz, exclusionHalfWidthBins: halfWidth, effectiveAverages, binCorrelation } = spectrum;
-  const power = Float64Array.from(spectrum.power);
+  const power = spectrum.power.slice();
   const centres = [...frequenciesHz, 0].map((f) =>
     f < spectrum.sampleRateHz / 2 ? f / binWidthHz : Infinity,
   );
   const owner = assignBins(power.length, centres, halfWidth);
-  const isTaken = Uint8Array.from(owner, (index) => (index < 0 ? 0 : 1));
+  const isTaken = new Uint8Array(owner.length);
+  for (let k = 0; k < owner.length; k++) isTaken[k] = owner[k] < 0 ? 0 : 1;
 
   const lobes = centres.map((centre, index): Lobe => {
     const frequencyHz = index < frequenciesHz.length ? frequenciesHz[index] : 0;

@@ -1,6 +1,6 @@
 import { countEffectiveAverages } from '../../spectrum/effective-averages.js';
 import type { PowerSpectrum } from '../../spectrum/power-spectrum.js';
-import { createRealFft } from '../../spectrum/create-real-fft.js';
+import { createRealFft, type RealFft } from '../../spectrum/create-real-fft.js';
 import { createWindow, type CosineWindow } from '../../window/create-window.js';
 import { WINDOW_COEFFICIENTS, type WindowName } from '../../window/window-coefficients.js';
 import type { ComplexSpectrum } from './fit-line.js';
@@ -22,17 +22,44 @@ export function createSpectrumKit(
   plan: FramePlan,
   windowName: WindowName,
 ): SpectrumKit {
-  const window = createWindow(windowName, plan.fftLength);
-  const fft = createRealFft(plan.fftLength);
   // Frames lie evenly spread, to a sample.
   const hop = plan.starts.length > 1 ? plan.starts[1] : plan.fftLength;
-  const worth = countEffectiveAverages(window, plan.starts.length, hop, hop);
+  const { window, fft, worth } = takeTables(windowName, plan.fftLength, plan.starts.length, hop);
   return {
     sampleRateHz,
     plan,
     window,
     transform: (samples, re, im) => fft.transform(samples, re, im),
     worth,
+  };
+}
+
+interface SpectrumTables {
+  readonly window: CosineWindow;
+  readonly fft: RealFft;
+  readonly worth: SpectrumKit['worth'];
+}
+
+/** Parts of a programme call for the same few lengths again and again; what was used longest ago goes first. */
+const TABLES_KEPT = 4;
+const tables = new Map<string, SpectrumTables>();
+
+function takeTables(windowName: WindowName, fftLength: number, frames: number, hop: number): SpectrumTables {
+  const key = `${windowName}/${fftLength}/${frames}/${hop}`;
+  const known = tables.get(key) ?? makeTables(windowName, fftLength, frames, hop);
+  tables.delete(key);
+  tables.set(key, known);
+  const [oldest] = tables.keys();
+  if (tables.size > TABLES_KEPT) tables.delete(oldest);
+  return known;
+}
+
+function makeTables(windowName: WindowName, fftLength: number, frames: number, hop: number): SpectrumTables {
+  const window = createWindow(windowName, fftLength);
+  return {
+    window,
+    fft: createRealFft(fftLength),
+    worth: countEffectiveAverages(window, frames, hop, hop),
   };
 }
 
