@@ -11,6 +11,23 @@ import { setup } from './setup.mjs';
 import { ROOT, ensureDebian } from './workspace.mjs';
 
 const ANALYSIS_DEADLINE_MS = 120_000;
+/** Parts of the full programme in the order played. */
+const PROGRAMME_PARTS = [
+  'programme-tone',
+  'programme-low-level',
+  'programme-idle',
+  'level-steps',
+  'sweep',
+  'separation',
+  'modulation-pair',
+  'difference-pair',
+  'modulation-steps',
+  'difference-steps',
+  'multitone',
+  'jitter',
+  'intersample',
+  'filter',
+];
 
 async function signInPage(page, url, account) {
   await page.goto(`${url}/sign-in`);
@@ -74,12 +91,23 @@ async function main() {
       capture: { address: `/captures/${named('received-tone').id}`, role: 'reviewer' },
       idle: { address: `/captures/${named('received-idle').id}`, role: 'reviewer' },
       'low-level': { address: `/captures/${named('candle-220417-low').id}`, role: 'reviewer' },
+      programme: { address: `/captures/${named('candle-220417-programme').id}`, role: 'reviewer' },
+      ...Object.fromEntries(
+        PROGRAMME_PARTS.map((part, index) => [
+          part,
+          {
+            address: `/captures/${named('candle-220417-programme').id}?segment=${index + 1}`,
+            role: 'reviewer',
+          },
+        ]),
+      ),
+      stimuli: { address: '/stimuli?name=level-steps', role: 'reviewer' },
       units: { address: '/units', role: 'reviewer' },
       unit: { address: `/units/${unit.id}`, role: 'reviewer' },
       account: { address: '/account', role: 'reviewer' },
       people: { address: '/people', role: 'administrator' },
     };
-    const tour = ['today', 'archive', 'capture', 'idle', 'unit'];
+    const tour = ['today', 'archive', 'capture', 'idle', 'unit', 'programme', 'level-steps', 'stimuli'];
     for (const width of isAll ? [1440, 390] : [1440]) {
       for (const theme of isAll ? ['light', 'dark'] : ['light']) {
         const opened = { null: await open(width, theme, null) };

@@ -20,7 +20,11 @@ async function* withoutDataSize(blocks: AsyncIterable<Uint8Array>): AsyncIterabl
 /** Plays a stimulus through a practice device and gives the bytes that a recorder would have written. */
 export async function* makeRecording(take: DemoTake): AsyncIterable<Uint8Array> {
   const { sampleRateHz, bits, device, stimulus: name } = take;
-  const stimulus = createStimulus(name, { sampleRateHz, bitsPerSample: bits });
+  const stimulus = createStimulus(name, {
+    sampleRateHz,
+    bitsPerSample: bits,
+    ...(take.isQuick ? { isQuick: true } : {}),
+  });
   const { frameCount } = stimulus.source;
   const played = await stimulus.source.read(0, frameCount);
   const recorded = applyDevice(played, sampleRateHz, { ...device, sampleRateHz });

@@ -7,7 +7,10 @@ import type { CreateConditionDto, CreateUnitDto } from '../units/dto/write-unit.
  */
 export interface DemoTake {
   readonly fileName: string;
-  readonly stimulus: 'sine' | 'low-level-tone' | 'silence';
+  /** One of dsp's stimuli. */
+  readonly stimulus: string;
+  /** The programme's short form. */
+  readonly isQuick?: boolean;
   readonly device: PracticeDevice;
   readonly sampleRateHz: number;
   readonly bits: 16 | 24;
@@ -65,6 +68,28 @@ const candle = device(
   ],
   -117,
 );
+/** The converter's left output runs out of supply on one half, from -2.35 dBFS up; its clock breathes a little. */
+const candlePinched = device(
+  'converter, left output stage held back',
+  15,
+  [
+    { kind: 'polynomial', channel: 'both', coefficients: [1, 0, 4e-6] },
+    { kind: 'clip', channel: 'left', positive: 0.763, negative: 2 },
+    { kind: 'filter', channel: 'both', type: 'high-pass', frequencyHz: 5, order: 1 },
+    { kind: 'crosstalk', channel: 'both', levelDb: -96, slopeDbPerOctave: 6 },
+    { kind: 'jitter', channel: 'both', peakToPeakPs: 240, frequencyHz: 118 },
+    { kind: 'clock', channel: 'both', ppm: 17.5 },
+  ],
+  -109,
+);
+const candleMended = device(
+  'converter after its output stage was mended',
+  16,
+  candlePinched.stages.filter(
+    ({ kind }) => kind !== 'clip' && kind !== 'noise' && kind !== 'lead' && kind !== 'gain',
+  ),
+  -109,
+);
 const strand = device('streamer', 14, [
   { kind: 'tone', channel: 'both', frequencyHz: 1000, levelDbfs: -101.5 },
   { kind: 'tone', channel: 'both', frequencyHz: 2000, levelDbfs: -108 },
@@ -121,7 +146,33 @@ export const DEMO_UNITS: readonly DemoUnit[] = [
     conditions: [
       {
         condition: { name: 'as bought', notes: '' },
-        takes: threeTakes('candle-220417', candle, ''),
+        takes: [
+          ...threeTakes('candle-220417', candle, ''),
+          {
+            fileName: 'candle-220417-programme.wav',
+            stimulus: 'programme',
+            device: candlePinched,
+            sampleRateHz: 48_000,
+            bits: 24,
+            rig: 'Window bench',
+            note: 'A rasp on loud piano, left alone. Played from a stick.',
+          },
+        ],
+      },
+      {
+        condition: { name: 'after rework 1', notes: 'Left output stage mended by its maker.' },
+        takes: [
+          {
+            fileName: 'candle-220417-mended.wav',
+            stimulus: 'programme',
+            isQuick: true,
+            device: candleMended,
+            sampleRateHz: 48_000,
+            bits: 24,
+            rig: 'Window bench',
+            note: '',
+          },
+        ],
       },
     ],
   },

@@ -89,7 +89,7 @@ const MAIN_TRACES: Readonly<Record<string, string>> = {
 export function sketchOf(record: RecordBody): number[][] {
   const main = MAIN_TRACES[record.measure] ?? 'spectrum';
   const channels = record.channels.map(({ traces }) => traces[main] ?? Object.values(traces)[0]);
-  const drawn = channels.filter((trace) => trace !== undefined && trace.x.length > 0);
+  const drawn = channels.filter((trace): trace is Trace => trace !== undefined && trace.x.length > 0);
   if (drawn.length > 0) return drawn.map(sketchTrace);
   const [shared] = Object.values(record.between.traces);
   if (shared) return [sketchTrace(shared)];
