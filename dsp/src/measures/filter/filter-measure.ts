@@ -57,7 +57,7 @@ async function analyseFilter(
     context,
     (share) => progress(0.6 + 0.4 * share),
   );
-  const playerRateHz = playerRate(aligned, context, scans);
+  const playerRateHz = playerRate(aligned, scans);
   const finished = scans.map((scan) => finishFilter(scan, playerRateHz, band, settings, context));
   if (finished.every(({ result }) => FILTER_FIGURES.every((key) => result.figures[key] === null))) {
     throw new DspInputError('NOTHING_MEASURABLE', 'no channel holds noise', {
@@ -95,13 +95,9 @@ function planNoise(frameCount: number, sampleRateHz: number): FramePlan {
   return { fftLength, starts };
 }
 
-/** From the descriptor; marks don't name the rate of noise, but where it ends does. */
-function playerRate(
-  aligned: AlignedStimulus,
-  { descriptor }: AnalysisContext,
-  scans: readonly ChannelScan[],
-): number | null {
-  if (descriptor) return descriptor.sampleRateHz * aligned.speed;
+/** From the descriptor or the marks; without either, where the noise ends tells. */
+function playerRate(aligned: AlignedStimulus, scans: readonly ChannelScan[]): number | null {
+  if (aligned.file !== null) return aligned.file.sampleRateHz * aligned.speed;
   const loudest = scans.reduce((one, other) => (other.level.meanSquare > one.level.meanSquare ? other : one));
   return loudest.level.meanSquare > 0 ? guessPlayerRate(loudest.spectrum) : null;
 }

@@ -2,7 +2,7 @@ import { DspInputError } from '../../errors.js';
 import { meanSquareToDbfs, powerToDb } from '../../level/decibel.js';
 import { makeWarning } from '../../record/make-warning.js';
 import type { BenchRecord, Warning } from '../../record/record.js';
-import type { SampleSource } from '../../source/sample-source.js';
+import type { CaptureFacts, SampleSource } from '../../source/sample-source.js';
 import type { AnalysisContext, AnalysisSettings, Measure } from '../measure.js';
 import { alignStimulus, partNumber } from '../shared/align-stimulus.js';
 import { assembleRecord } from '../shared/assemble-record.js';
@@ -118,6 +118,13 @@ async function analyseIntersample(
   });
 }
 
+/** Four samples a period leave no run of end codes: some of them alone say that the recorder cut the tone off. */
+const END_CODES = 3;
+
+function isCutOff({ level, tone }: StepReading, capture: CaptureFacts): boolean {
+  return level.endCodeCount >= END_CODES || isOverloaded({ level, tone }, capture);
+}
+
 function finishChannelOf(
   channel: string,
   [high, low]: readonly [TakenStep, TakenStep],
@@ -134,10 +141,9 @@ function finishChannelOf(
     powerDeviationDb(parts.fundamental, parts.fundamentalVariance),
   );
   const warnings: Warning[] = [];
-  if (isOverloaded({ level: high.reading.level, tone: high.reading.tone }, capture)) {
-    warnings.push(
-      makeWarning('recording-overloaded', { runs: high.reading.level.clippedRunCount }, { channel }),
-    );
+  if (isCutOff(high.reading, capture)) {
+    const { endCodeCount } = high.reading.level;
+    warnings.push(makeWarning('recording-overloaded', { runs: endCodeCount }, { channel }));
   }
   const about = { channel, figures: ['thdDb'] };
   if (harmonics.length === 0) {

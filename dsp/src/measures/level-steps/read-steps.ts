@@ -116,12 +116,16 @@ function takeStepApart(
     .filter(({ lobe }) => lobe.power >= SIGNIFICANCE * lobe.standardDeviation && lobe.power > 0);
   const noise = sumBand(spectrum, band.lowHz, band.highHz, { power });
   const harmonics = present.reduce((sum, { lobe }) => sum + lobe.power, 0);
+  // One of many places stands out by chance alone: together they must stand out of all their noise.
+  const scatter = Math.sqrt(
+    lobes.slice(1).reduce((sum, { bins, noisePerBin }) => sum + (bins * noisePerBin) ** 2, 0),
+  );
   // Harmonics that stand in the noise are noise: what their lobes hold beyond its mean is scatter.
   const residual = noise + lobes.slice(1).reduce((sum, lobe) => sum + lobe.power, 0);
   return {
     stimulusDbfs: levelDbfs,
     ...tone,
-    harmonics: present.length > 0 ? harmonics : null,
+    harmonics: harmonics > SIGNIFICANCE * scatter && harmonics > 0 ? harmonics : null,
     orders: new Map(present.map(({ order, lobe }) => [order, lobe.power])),
     residual: Math.max(residual, noise, 0),
     noise,

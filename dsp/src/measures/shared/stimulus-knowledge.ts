@@ -30,6 +30,7 @@ export interface StimulusKnowledge {
 /** Filters of player and recorder ring on past a body's ramps for less than this. */
 const SETTLING_S = 0.05;
 const SHORTEST_BODY_S = 0.2;
+const WHOLE_S = 0.002;
 
 /**
  * Gathers what marks and descriptor say of the stimulus.
@@ -89,7 +90,8 @@ export function cutWarnings(
   // A programme tells of its parts one by one.
   if (delayS === null || placed) return [];
   const warnings: Warning[] = [];
-  if (delayS < 0)
+  // Marks are placed to a few samples: a hair below zero is no cut.
+  if (delayS < -WHOLE_S)
     warnings.push(
       makeWarning('recording-cut', { where: `began ${(-delayS).toFixed(2)} s after the stimulus` }),
     );

@@ -150,9 +150,9 @@ function finishChannelOf(channel: string, found: PairStepChannel | null): Finish
   };
 }
 
-/** Where the noise would hide a product in the loudest step, dB. */
+/** How far down the noise would hide a product in the loudest step, dB. */
 function floorOf(rising: readonly PairStep[]): number {
-  return Math.round(ratioToDb(rising[rising.length - 1].parts.total.below));
+  return Math.round(-ratioToDb(rising[rising.length - 1].parts.total.below));
 }
 
 function tracesOf(kind: 'modulation' | 'difference', rising: readonly PairStep[]): Record<string, Trace> {

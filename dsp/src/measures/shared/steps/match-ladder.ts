@@ -11,6 +11,8 @@ const EDGE_S = 0.03;
 const LIKENESS_DB = 0.7;
 /** So many of the ladder's blocks must be in the recording. */
 const LEAST_SHARE = 0.4;
+/** Of two places that fit alike the one with more of the ladder counts. */
+const MISSING_DB = 0.3;
 /** A ladder needs a few steps to be told from a tone that fades. */
 const LEAST_SPAN_DB = 6;
 
@@ -66,5 +68,6 @@ function errorAt(levelsDb: Float64Array, template: readonly TemplateBlock[], del
   const gain = gains[gains.length >> 1];
   const off = gains.map((value) => Math.abs(value - gain)).sort((one, other) => one - other);
   // Three quarters must follow it: half of a steady tone's blocks always lie near one level.
-  return off[Math.floor(off.length * 0.75)];
+  const error = off[Math.floor(off.length * 0.75)];
+  return error + MISSING_DB * (1 - gains.length / template.length);
 }
