@@ -11,7 +11,7 @@ import { useAnalyse, useCancelAnalysis } from '../api/capture-actions';
 import type { ServedRecord } from '../api/record-queries';
 import { checkMethod, isSameMethod, methodOf, toRequest } from '../model/method';
 import type { Method } from '../model/method';
-import { NumberSlot, usualValues } from './number-slot';
+import { NumberSlot, usualValues } from '@/components/sentence/number-slot';
 
 export interface MethodBlockProps {
   capture: Capture;

@@ -1,7 +1,7 @@
 import { Button } from '@radix-ui/themes';
 import { useState } from 'react';
 import { TextInput } from '@/components/forms/field';
-import { SlotPopover } from '@/components/sentence/slot';
+import { SlotPopover } from './slot';
 import { withUnit } from '@/lib/format/quantity';
 
 export interface NumberSlotProps {

@@ -1,0 +1,1 @@
+export { StimuliPage as Component } from '@/features/stimuli/components/stimuli-page';

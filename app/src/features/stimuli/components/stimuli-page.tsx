@@ -1,0 +1,115 @@
+import { useQuery } from '@tanstack/react-query';
+import { Link, useSearchParams } from 'react-router-dom';
+import { Columns, Page } from '@/components/page/page';
+import { PageHead } from '@/components/page/page-head';
+import { FailedState, LoadingState } from '@/components/states/states';
+import { useStimulusFile } from '../hooks/use-stimulus-file';
+import { useStimulusWorker } from '../hooks/use-stimulus-worker';
+import { findEntry, STIMULUS_GROUPS } from '../model/stimulus-catalogue';
+import { readForm, refusedKey, withName, withWord } from '../model/stimulus-form';
+import { LevelCaution, PlayingAdvice } from './playing-advice';
+import { StimulusContents } from './stimulus-contents';
+import { StimulusFile } from './stimulus-file';
+import { StimulusPreviewCharts } from './stimulus-preview';
+import { StimulusSentence } from './stimulus-sentence';
+import './stimuli.css';
+
+/** Test signals: choose one, set its words, look at it, take it away as a file. */
+export function StimuliPage() {
+  const [params, setParams] = useSearchParams();
+  const form = readForm(params);
+  const entry = findEntry(form.name);
+  const worker = useStimulusWorker();
+  const preview = useQuery({
+    queryKey: ['stimulus-preview', form.name, form.options],
+    queryFn: () => worker().preview(form.name, form.options),
+    staleTime: Infinity,
+    gcTime: 60_000,
+    retry: false,
+  });
+  const file = useStimulusFile(worker);
+  const why = preview.error instanceof Error ? preview.error.message : null;
+  const refused = why === null ? null : { key: refusedKey(why), why: sentenceOf(why) };
+  const isExact = form.name === 'jitter-test' || form.name === 'programme';
+  return (
+    <Page>
+      <PageHead
+        title="Stimuli"
+        sub="Test signals as files, each with a descriptor of what it holds."
+        hasDivider
+      />
+      <Columns
+        margin={
+          <>
+            <LevelCaution />
+            <PlayingAdvice isExact={isExact} />
+          </>
+        }
+      >
+        <div className="bl-stimuli">
+          <nav aria-label="Stimuli" className="bl-stimuli-list">
+            {STIMULUS_GROUPS.map(({ question, entries }) => (
+              <section key={question} aria-label={question}>
+                <h2>{question}</h2>
+                <ul>
+                  {entries.map(({ name, title }) => (
+                    <li key={name}>
+                      <Link
+                        to={{ search: withName(params, name).toString() }}
+                        aria-current={name === form.name ? 'page' : undefined}
+                        replace
+                      >
+                        {title}
+                      </Link>
+                    </li>
+                  ))}
+                </ul>
+              </section>
+            ))}
+          </nav>
+          <div className="bl-stimulus">
+            <h2 className="bl-stimulus-title">{entry.title}</h2>
+            <p className="bl-ink-2">{entry.about}</p>
+            <StimulusSentence
+              form={form}
+              refused={refused}
+              onChange={(key, value) => setParams(withWord(params, key, value), { replace: true })}
+            />
+            {refused !== null && (
+              <p role="alert" className="bl-stimulus-failed">
+                {refused.why}
+              </p>
+            )}
+            <StimulusFile
+              form={form}
+              preview={preview.data}
+              state={file.state}
+              onWrite={() => void file.write(form)}
+              onCancel={file.cancel}
+            />
+          </div>
+        </div>
+        {preview.isPending && <LoadingState what="Drawing the stimulus" />}
+        {refused?.key === null && (
+          <FailedState
+            what="The stimulus could not be drawn."
+            why={refused.why}
+            onRetry={() => void preview.refetch()}
+          />
+        )}
+        {preview.data && (
+          <>
+            <StimulusPreviewCharts preview={preview.data} title={entry.title} />
+            <StimulusContents preview={preview.data} />
+          </>
+        )}
+      </Columns>
+    </Page>
+  );
+}
+
+/** A refusal as a sentence of its own. */
+function sentenceOf(why: string): string {
+  const text = why.charAt(0).toUpperCase() + why.slice(1);
+  return text.endsWith('.') ? text : `${text}.`;
+}
