@@ -32,6 +32,25 @@ describe('what the worker makes', () => {
     ).rejects.toMatchObject({ code: 'CANCELLED' });
   });
 
+  it('hears a stop that comes as a message while it writes', async () => {
+    let isCancelled = false;
+    const shares: number[] = [];
+    const writing = writeStimulus(
+      'sine',
+      { sampleRateHz: 192_000, bitsPerSample: 24 },
+      {
+        onProgress: (share) => {
+          // A task of its own, as a message from the page is: seen only if writing lets tasks in.
+          if (shares.length === 0) setTimeout(() => (isCancelled = true), 0);
+          shares.push(share);
+        },
+        isCancelled: () => isCancelled,
+      },
+    );
+    await expect(writing).rejects.toMatchObject({ code: 'CANCELLED' });
+    expect(shares.at(-1)).toBeLessThan(0.5);
+  });
+
   it('shows a file before it is made: its size, its whole, its line', async () => {
     const preview = await previewStimulus('sine', { ...OPTIONS, levelDbfs: -6 });
     const { wav } = await writeStimulus(

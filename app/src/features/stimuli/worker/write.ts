@@ -23,6 +23,14 @@ export interface WriteHooks {
 /** Blocks are handed to the browser's own keeping in pieces of this size, so that none of a long file stays on the heap. */
 const PIECE_BYTES = 8 * 1024 * 1024;
 
+/** How much is written before the worker hears what the page has said meanwhile. */
+const UNHEARD_BYTES = 1024 * 1024;
+
+/** Lets waiting messages in: awaiting what is already there would never leave room for a stop. */
+function hearMessages(): Promise<void> {
+  return new Promise((resolve) => setTimeout(resolve, 0));
+}
+
 /**
  * Writes a stimulus as a WAV file, block by block, with its descriptor.
  *
@@ -38,10 +46,14 @@ export async function writeStimulus(
   const hash = sha256.create();
   const pieces: Blob[] = [];
   let blocks: Uint8Array<ArrayBuffer>[] = [];
-  let [held, done] = [0, 0];
+  let [held, done, heardAt] = [0, 0, 0];
   const bytesPerSample = encoding.bits === '32f' ? 4 : encoding.bits / 8;
   const total = source.frameCount * source.channelCount * bytesPerSample;
   for await (const block of encodeWavBlocks(source, encoding)) {
+    if (done - heardAt >= UNHEARD_BYTES) {
+      await hearMessages();
+      heardAt = done;
+    }
     if (isCancelled()) throw new DspInputError('CANCELLED', 'the file was not written');
     hash.update(block);
     blocks.push(new Uint8Array(block));
