@@ -2,6 +2,7 @@ import { NumberSlot, usualValues } from '@/components/sentence/number-slot';
 import { Sentence, SlotSelect } from '@/components/sentence/slot';
 import { formatFrequency, formatLevel, formatSampleRate, withUnit } from '@/lib/format/quantity';
 import { kindOf, type NumberKey, RATES_HZ, type StimulusForm } from '../model/stimulus-form';
+import { StimulusWays } from './stimulus-ways';
 
 export interface StimulusSentenceProps {
   form: StimulusForm;
@@ -17,11 +18,22 @@ const BITS = [
 ] as const;
 
 const LEVELS = [0, -1, -3, -6, -10, -20] as const;
+const DRAWN_BY_LOT: readonly string[] = ['white-noise', 'pink-noise', 'multitone', 'programme'];
 const CEILINGS = [-3, -6, -10, -20] as const;
+
+/** dsp's own, when none is given. */
+const USUAL_SEED = 1;
+
+/** Whether anything in the file is drawn by lot: noise, phases, dither. */
+function hasSeed({ name, options: { bitsPerSample, dither } }: StimulusForm): boolean {
+  const isDithered = kindOf(name).isDithered && bitsPerSample !== '32f' && dither !== 'none';
+  return isDithered || DRAWN_BY_LOT.includes(name);
+}
 
 /** What the file will hold, word by word. */
 export function StimulusSentence({ form, refused, onChange }: StimulusSentenceProps) {
   const { options } = form;
+  const seed = options.seed ?? USUAL_SEED;
   const kind = kindOf(form.name);
   const { defaults } = kind;
   const errorOf = (key: string) => (refused?.key === key ? refused.why : undefined);
@@ -121,7 +133,14 @@ export function StimulusSentence({ form, refused, onChange }: StimulusSentencePr
           )}
         </>
       )}
-      <Ways form={form} onChange={onChange} />.
+      <StimulusWays form={form} onChange={onChange} />
+      {hasSeed(form) && (
+        <>
+          {', of seed '}
+          {number('seed', 'Seed', seed, '', String(seed), [], USUAL_SEED)}
+        </>
+      )}
+      .
     </Sentence>
   );
 }
@@ -156,63 +175,6 @@ function Tones({ form: { name, options }, number }: { form: StimulusForm; number
         <>
           , tones of {tone('low', 'Low frequency', 'lowFrequencyHz', [60, 250, 19_000])} and{' '}
           {tone('high', 'High frequency', 'highFrequencyHz', [7000, 8000, 20_000])}
-        </>
-      )}
-    </>
-  );
-}
-
-/** Channels, dither, seed and what stands around the body. */
-function Ways({ form: { name, options }, onChange }: Pick<StimulusSentenceProps, 'form' | 'onChange'>) {
-  const kind = kindOf(name);
-  const isFloat = options.bitsPerSample === '32f';
-  return (
-    <>
-      {!kind.isBothOnly && (
-        <>
-          {', in '}
-          <SlotSelect
-            label="Channels"
-            value={options.channels ?? 'both'}
-            options={[
-              { value: 'both', label: 'both channels' },
-              { value: 'left', label: 'left alone' },
-              { value: 'right', label: 'right alone' },
-            ]}
-            onChange={(value) => onChange('channels', value === 'both' ? null : value)}
-          />
-        </>
-      )}
-      {kind.isDithered && !isFloat && (
-        <>
-          {', '}
-          <SlotSelect
-            label="Dither"
-            value={options.dither ?? 'tpdf'}
-            options={[
-              { value: 'tpdf', label: 'dithered', detail: 'triangular, two steps wide' },
-              { value: 'none', label: 'without dither', detail: 'rounding shows as distortion' },
-            ]}
-            onChange={(value) => onChange('dither', value === 'none' ? 'none' : null)}
-          />
-        </>
-      )}
-      {!kind.isDigitalZero && (
-        <>
-          {', '}
-          <SlotSelect
-            label="Around it"
-            value={options.isBare ? 'bare' : 'marked'}
-            options={[
-              {
-                value: 'marked',
-                label: 'with lead-in and marks',
-                detail: 'found by itself in any recording',
-              },
-              { value: 'bare', label: 'bare', detail: 'the signal alone: needs its descriptor' },
-            ]}
-            onChange={(value) => onChange('bare', value === 'bare' ? 'yes' : null)}
-          />
         </>
       )}
     </>
