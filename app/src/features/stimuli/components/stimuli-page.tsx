@@ -1,16 +1,17 @@
 import { useQuery } from '@tanstack/react-query';
-import { Link, useSearchParams } from 'react-router-dom';
+import { useSearchParams } from 'react-router-dom';
 import { Columns, Page } from '@/components/page/page';
 import { PageHead } from '@/components/page/page-head';
 import { FailedState, LoadingState } from '@/components/states/states';
 import { useStimulusFile } from '../hooks/use-stimulus-file';
 import { useStimulusWorker } from '../hooks/use-stimulus-worker';
-import { findEntry, STIMULUS_GROUPS } from '../model/stimulus-catalogue';
-import { readForm, refusedKey, withName, withWord } from '../model/stimulus-form';
+import { findEntry } from '../model/stimulus-catalogue';
+import { readForm, refusedKey, withWord } from '../model/stimulus-form';
 import { LevelCaution, PlayingAdvice } from './playing-advice';
+import { StimulusList } from './stimulus-list';
 import { StimulusContents } from './stimulus-contents';
 import { StimulusFile } from './stimulus-file';
-import { StimulusPreviewCharts } from './stimulus-preview';
+import { StimulusPreviewCharts, StimulusWhole } from './stimulus-preview';
 import { StimulusSentence } from './stimulus-sentence';
 import './stimuli.css';
 
@@ -47,26 +48,7 @@ export function StimuliPage() {
         }
       >
         <div className="bl-stimuli">
-          <nav aria-label="Stimuli" className="bl-stimuli-list">
-            {STIMULUS_GROUPS.map(({ question, entries }) => (
-              <section key={question} aria-label={question}>
-                <h2>{question}</h2>
-                <ul>
-                  {entries.map(({ name, title }) => (
-                    <li key={name}>
-                      <Link
-                        to={{ search: withName(params, name).toString() }}
-                        aria-current={name === form.name ? 'page' : undefined}
-                        replace
-                      >
-                        {title}
-                      </Link>
-                    </li>
-                  ))}
-                </ul>
-              </section>
-            ))}
-          </nav>
+          <StimulusList chosen={form.name} params={params} />
           <div className="bl-stimulus">
             <h2 className="bl-stimulus-title">{entry.title}</h2>
             <p className="bl-ink-2">{entry.about}</p>
@@ -87,6 +69,7 @@ export function StimuliPage() {
               onWrite={() => void file.write(form)}
               onCancel={file.cancel}
             />
+            {preview.data && <StimulusWhole preview={preview.data} />}
           </div>
         </div>
         {preview.isPending && <LoadingState what="Drawing the stimulus" />}

@@ -9,10 +9,24 @@ import type { StimulusPreview } from '../worker/preview';
 
 const CHANNELS = ['left', 'right'] as const;
 
-/** The file before it is made: all of it, its first wave, its spectrum. */
-export function StimulusPreviewCharts({ preview, title }: { preview: StimulusPreview; title: string }) {
-  const { descriptor, durationS, overview } = preview;
+/** All of a file at a glance. */
+export function StimulusWhole({
+  preview: { descriptor, durationS, overview },
+}: {
+  preview: StimulusPreview;
+}) {
   const [part] = descriptor.parts;
+  const marked = part === undefined || descriptor.parts.length > 1 ? null : part;
+  return (
+    <Section title="The whole file" sub={formatDuration(durationS)}>
+      <WaveformDrawing overview={overview} durationS={durationS} channels={CHANNELS} segment={marked} />
+    </Section>
+  );
+}
+
+/** What the file holds before it is made: its spectrum and its first wave. */
+export function StimulusPreviewCharts({ preview, title }: { preview: StimulusPreview; title: string }) {
+  const { descriptor } = preview;
   const wave = useMemo(() => beginningModel(preview), [preview]);
   const spectrum = useMemo(() => spectrumModel(preview), [preview]);
   const source: ChartSource = useMemo(
@@ -24,14 +38,10 @@ export function StimulusPreviewCharts({ preview, title }: { preview: StimulusPre
     }),
     [title, descriptor],
   );
-  const marked = part === undefined || descriptor.parts.length > 1 ? null : part;
   const about = descriptor.parts.length > 1 ? 'of its first part' : 'of its body';
   const isSilent = preview.spectrum.x.length === 0;
   return (
     <>
-      <Section title="The whole file" sub={formatDuration(durationS)}>
-        <WaveformDrawing overview={overview} durationS={durationS} channels={CHANNELS} segment={marked} />
-      </Section>
       <CurveChart
         title="What it holds"
         sub={`the spectrum ${about}, before dither`}
