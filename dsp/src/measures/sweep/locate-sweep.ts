@@ -4,7 +4,11 @@ import { createStimulus } from '../../stimulus/create-stimulus.js';
 import { sweepDurationS, type SweepSignal } from '../../stimulus/sweep-signal.js';
 import { createWindow } from '../../window/create-window.js';
 import type { AnalysisContext } from '../measure.js';
-import { createDeconvolver } from '../shared/deconvolution/create-deconvolver.js';
+import {
+  AFTER_SWEEP_S,
+  BEFORE_SWEEP_S,
+  createDeconvolver,
+} from '../shared/deconvolution/create-deconvolver.js';
 import { findArrival } from '../shared/deconvolution/find-arrival.js';
 import { sweepOfPart } from '../shared/deconvolution/sweep-of-part.js';
 import { throwIfCancelled } from '../shared/stream-frames.js';
@@ -49,6 +53,63 @@ export async function locateSweep(
   const total = impulse.samples.length;
   const peak = Math.abs(impulse.samples[((at % total) + total) % total]);
   return peak > LEAST_PEAK * rms ? { sweep, fromS: arrival.delayS } : null;
+}
+
+/** A sweep with the clock that the recording itself tells. */
+export interface RefinedSweep extends LocatedSweep {
+  readonly speed: number;
+  readonly isClockKnown: boolean;
+  readonly isInverted: boolean;
+}
+
+const ROUNDS = 5;
+/** Growth of the delay with ln f that is left: below the first nothing more is gained, below the second the clock counts. */
+const SETTLED_S = 2e-9;
+const KNOWN_S = 2e-7;
+/** A growth beyond this is none of a clock. */
+const MOST_PER_LOG_S = 0.05;
+const REACH_S = 0.1;
+const MIDDLE_HZ = 1000;
+
+/**
+ * Settles a bare sweep's beginning and the player's clock: clocks that differ make the delay grow with ln f.
+ *
+ * @returns the place as it was found where the recording doesn't tell the clock
+ */
+export async function refineSweep(
+  source: SampleSource,
+  channel: number,
+  located: LocatedSweep,
+): Promise<RefinedSweep> {
+  const { sweep } = located;
+  const { sampleRateHz, frameCount } = source;
+  let place = { fromS: located.fromS, speed: 1 };
+  let [left, isInverted] = [Infinity, false];
+  for (let round = 0; round < ROUNDS && left > SETTLED_S; round++) {
+    const from = Math.min(frameCount, Math.max(0, Math.round((place.fromS - BEFORE_SWEEP_S) * sampleRateHz)));
+    const endS = place.fromS + sweepDurationS(sweep) / place.speed + AFTER_SWEEP_S;
+    const count = Math.max(0, Math.min(frameCount, Math.round(endS * sampleRateHz)) - from);
+    const leadS = place.fromS - from / sampleRateHz;
+    const deconvolver = createDeconvolver({
+      sweep,
+      speed: place.speed,
+      sampleRateHz,
+      leadS,
+      frameCount: count,
+    });
+    const impulse = deconvolver.deconvolve((await source.read(from, count))[channel]);
+    const arrival = findArrival(impulse, REACH_S, deconvolver.highHz, true);
+    if (arrival === null || Math.abs(arrival.perLogS) > MOST_PER_LOG_S) break;
+    left = Math.abs(arrival.perLogS);
+    isInverted = arrival.isInverted;
+    const speed = place.speed / (1 + (arrival.perLogS * place.speed) / sweep.rateS);
+    // The delay was fitted as it is at 1 kHz; the sweep's beginning follows from it.
+    const passedS = (v: number): number => (sweep.rateS / v) * Math.log(MIDDLE_HZ / (sweep.lowHz * v));
+    place = { fromS: place.fromS + arrival.delayS + passedS(place.speed) - passedS(speed), speed };
+  }
+  return left < KNOWN_S
+    ? { sweep, ...place, isClockKnown: true, isInverted }
+    : { ...located, speed: 1, isClockKnown: false, isInverted };
 }
 
 const FRAME_S = 0.085;

@@ -7,7 +7,7 @@ import type { SweepSignal } from '../../stimulus/sweep-signal.js';
 import type { AnalysisContext } from '../measure.js';
 import type { AlignedStimulus } from '../shared/align-stimulus.js';
 import { sweepOfPart } from '../shared/deconvolution/sweep-of-part.js';
-import { locateSweep, recogniseSweep } from './locate-sweep.js';
+import { locateSweep, recogniseSweep, refineSweep } from './locate-sweep.js';
 
 /** A sweep and where it lies in the recording. */
 export interface PlacedSweep {
@@ -54,10 +54,9 @@ export async function placeSweep(
     });
   }
   const isAssumed = described === undefined;
+  const refined = await refineSweep(source, channel, located);
   return {
-    ...located,
-    speed: 1,
-    isClockKnown: false,
+    ...refined,
     isAssumed,
     warnings: isAssumed ? [makeWarning('stimulus-assumed', { name: 'sweep' })] : [],
   };

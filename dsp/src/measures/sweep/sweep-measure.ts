@@ -1,11 +1,11 @@
 import { DspInputError } from '../../errors.js';
 import { createLevelMeter, type LevelReading } from '../../level/create-level-meter.js';
 import { makeWarning } from '../../record/make-warning.js';
-import type { BenchRecord, StimulusMatch, Warning } from '../../record/record.js';
+import type { BenchRecord, FigureLimit, RecordBody, StimulusMatch, Warning } from '../../record/record.js';
 import type { SampleSource } from '../../source/sample-source.js';
 import { sweepDurationS, type SweepSignal } from '../../stimulus/sweep-signal.js';
 import type { AnalysisContext, AnalysisSettings, Measure } from '../measure.js';
-import { alignStimulus, type AlignedStimulus } from '../shared/align-stimulus.js';
+import { alignStimulus, partNumber, type AlignedStimulus } from '../shared/align-stimulus.js';
 import { assembleRecord } from '../shared/assemble-record.js';
 import { isOverloaded } from '../shared/describe-recording.js';
 import {
@@ -14,6 +14,7 @@ import {
   createDeconvolver,
 } from '../shared/deconvolution/create-deconvolver.js';
 import { emptyChannel, type FinishedChannel } from '../shared/finish-channel.js';
+import { bareLimit } from '../shared/limits.js';
 import { selectByName } from '../shared/open-analysis.js';
 import { createProgress } from '../shared/progress.js';
 import { settleBand, settleHighestHarmonic, shortNumber } from '../shared/settings-band.js';
@@ -96,17 +97,32 @@ async function analyseSweep(
     bandLowHz: band.lowHz,
     bandHighHz: band.highHz,
     highestHarmonic: settleHighestHarmonic(settings),
-    reference: { unitFullScaleDbfs: null, from: null },
+    reference: referenceOf(aligned, placed, first ?? null),
     stimulus: matchOf(aligned, placed, first?.arrival.isInverted ?? null),
     channels: finished.map(({ result }) => result),
     warnings: [
       ...cutWarnings(aligned, context),
+      ...band.warnings,
       ...placed.warnings,
       ...(missing === null ? [] : [makeWarning('sweep-cut', { missing })]),
       ...(placed.isClockKnown ? [] : [makeWarning('clock-unknown')]),
       ...finished.flatMap(({ warnings }) => warnings),
     ],
   });
+}
+
+/** The output at 1 kHz for 0 dBFS, where the sweep's level is known to have been played. */
+function referenceOf(
+  aligned: AlignedStimulus,
+  placed: PlacedSweep,
+  first: MeasuredResponse | null,
+): RecordBody['reference'] {
+  const part = aligned.file?.parts.find(({ measure }) => measure === 'sweep');
+  const levelDbfs =
+    part === undefined || placed.isAssumed || !aligned.isLevelKnown ? null : partNumber(part, 'levelDbfs');
+  return first === null || levelDbfs === null
+    ? { unitFullScaleDbfs: null, from: null }
+    : { unitFullScaleDbfs: first.gainDb - levelDbfs, from: aligned.recognisedBy };
 }
 
 function rangeOf(source: SampleSource, { sweep, fromS, speed }: PlacedSweep) {
@@ -137,23 +153,26 @@ function finishSweep(
   }
   const { figures, traces } = response;
   const open = (['minus3DbLowHz', 'minus3DbHighHz'] as const).filter((key) => figures[key] === null);
+  const isClipped = isOverloaded({ level, tone: { frequencyHz: 20 } }, capture);
+  const limits: Record<string, FigureLimit> = isClipped
+    ? Object.fromEntries(SWEEP_FIGURES.map((key) => [key, bareLimit('overload')]))
+    : {};
   const warnings: Warning[] = [
-    ...(isOverloaded({ level, tone: { frequencyHz: 20 } }, capture)
-      ? [makeWarning('recording-overloaded', { runs: level.clippedRunCount }, { channel })]
-      : []),
+    ...(isClipped ? [makeWarning('recording-overloaded', { runs: level.clippedRunCount }, { channel })] : []),
     ...(open.length > 0 ? [makeWarning('no-half-power-point', { channel }, { channel, figures: open })] : []),
   ];
   return {
-    result: { channel, figures, limits: {}, uncertainty: {}, harmonics: [], components: [], traces },
+    result: { channel, figures, limits, uncertainty: {}, harmonics: [], components: [], traces },
     warnings,
   };
 }
 
 function matchOf(aligned: AlignedStimulus, placed: PlacedSweep, isInverted: boolean | null): StimulusMatch {
   const polarity = isInverted === null ? aligned.polarity : isInverted ? 'inverted' : 'same';
-  const { name, recognisedBy, clockOffsetPpm } = aligned;
+  const { name, recognisedBy } = aligned;
+  const clockOffsetPpm = aligned.clockOffsetPpm ?? (placed.isClockKnown ? (placed.speed - 1) * 1e6 : null);
   const part = aligned.file?.parts.find(({ measure }) => measure === 'sweep');
   const fileFromS = placed.isAssumed ? 0 : (part?.fromS ?? 0);
-  const delayS = aligned.delayS ?? placed.fromS - fileFromS;
+  const delayS = aligned.delayS ?? placed.fromS - fileFromS / placed.speed;
   return { name, recognisedBy, delayS, clockOffsetPpm, polarity };
 }

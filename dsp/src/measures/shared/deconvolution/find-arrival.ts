@@ -1,28 +1,34 @@
+import { fitExcessDelay } from './excess-delay.js';
 import { transformCut, type FrequencyResponse } from './frequency-response.js';
 import type { ImpulseResponse } from './create-deconvolver.js';
 
 /** Where a response arrives, and which way up. */
 export interface Arrival {
   readonly delayS: number;
+  /** Growth of the delay with ln f, seconds; 0 unless it was sought. */
+  readonly perLogS: number;
   readonly isInverted: boolean;
 }
 
-const CUT_S = 0.02;
-const LOW_HZ = 300;
-/** Phases are compared up to this share of the band's end. */
-const HIGH_SHARE = 0.5;
+/** Around the highest sample: a filter's own phase lasts longer after it. */
+const BEFORE_S = 0.1;
+const AFTER_S = 0.25;
+/** Below this a cut as short as that says little. */
+const LOW_HZ = 20;
 
 /**
- * Finds the arrival of a response: the highest sample, then the slope of its phase.
+ * Finds the arrival of a response: the highest sample, then the delay that its phase holds beyond a filter's own.
  *
  * @param searchS - how far from no delay it may lie; null for anywhere
  * @param highHz - end of the band in which there is a response
+ * @param seeksClock - whether the delay's growth with frequency is wanted too
  * @returns null for a response of zeros
  */
 export function findArrival(
   impulse: ImpulseResponse,
   searchS: number | null,
   highHz: number,
+  seeksClock = false,
 ): Arrival | null {
   const { samples, sampleRateHz } = impulse;
   const total = samples.length;
@@ -35,9 +41,10 @@ export function findArrival(
   }
   if (best === 0) return null;
   const rough = at / sampleRateHz;
-  const response = transformCut(impulse, { centreS: rough, beforeS: CUT_S, afterS: CUT_S });
-  const { delayS, phase } = phaseSlope(response, LOW_HZ, HIGH_SHARE * highHz);
-  return { delayS: rough + delayS, isInverted: Math.cos(phase) < 0 };
+  const response = transformCut(impulse, { centreS: rough, beforeS: BEFORE_S, afterS: AFTER_S });
+  const isInverted = samples[(at + total) % total] < 0;
+  const { delayS, perLogS } = fitExcessDelay(response, { lowHz: LOW_HZ, highHz, isInverted, seeksClock });
+  return { delayS: rough + delayS, perLogS, isInverted };
 }
 
 /**
