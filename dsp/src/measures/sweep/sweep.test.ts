@@ -110,7 +110,7 @@ describe('known filters', () => {
     // The delay that is taken out is known to half a microsecond: 0.2° at 1 kHz. -45.000° at the corner, and by the bilinear transform -atan of the tangents' ratio anywhere.
     for (const f of [100, 500, 1000, 3000, 10_000]) {
       const expected = (-180 / Math.PI) * Math.atan(tangent(f) / tangent(1000));
-      expect(Math.abs(at(left, 'phase', f) - expected)).toBeLessThan(f <= 1000 ? 0.2 : 1);
+      expect(Math.abs(at(left, 'phase', f) - expected)).toBeLessThan(f <= 1000 ? 0.2 : 2);
     }
   });
 
