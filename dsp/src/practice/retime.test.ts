@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { interpolate } from './stages/interpolate.js';
 import { ratioToDb } from '../level/decibel.js';
 import { synthesise } from '../testing/signals.js';
 import { lineOf, pass } from './testing/pass.js';
@@ -39,6 +40,12 @@ describe('delay', () => {
     expect(right.subarray(5)).toEqual(samples.subarray(0, LENGTH - 5));
     expect([...right.subarray(0, 5)]).toEqual([0, 0, 0, 0, 0]);
   });
+});
+
+it('a delay too small for its rounding is no delay', () => {
+  const frames = Float64Array.of(0.1, -0.2, 0.3, 0.4);
+  const [moved] = interpolate([frames], 4, (frame) => frame - Number.MIN_VALUE);
+  expect([...moved]).toEqual([...frames]);
 });
 
 describe('clock', () => {

@@ -74,8 +74,10 @@ export function interpolate(
   let lastFraction = NaN;
   for (let n = 0; n < frameCount; n++) {
     const position = positionOf(n);
-    const base = Math.floor(position);
-    const fraction = position - base;
+    // A hair below a whole frame rounds to a fraction of one: that is the next frame.
+    const whole = Math.floor(position);
+    const base = position - whole < 1 ? whole : whole + 1;
+    const fraction = position - whole < 1 ? position - whole : 0;
     if (fraction !== lastFraction) {
       const row = Math.floor(fraction * ROWS_PER_FRAME);
       blendRows(rows, row, fraction * ROWS_PER_FRAME - row, taps);
