@@ -51,13 +51,19 @@ describe('the stimuli', () => {
   });
 
   it.each([
-    { name: 'jitter-test', address: 'name=jitter-test&rate=48000&bits=16', options: {} },
+    {
+      name: 'jitter-test',
+      address: 'name=jitter-test&rate=48000&bits=16',
+      options: {},
+      stem: 'jitter-test-48k-16bit',
+    },
     {
       name: 'difference-pair',
       address: 'name=difference-pair&rate=48000&bits=24&level=-6&duration=2',
       options: { levelDbfs: -6, durationS: 2 },
+      stem: 'difference-pair-48k-24bit--6db-2s',
     },
-  ])('$name comes as the very bytes that dsp writes', async ({ name, address, options }) => {
+  ])('$name comes as the very bytes that dsp writes', async ({ name, address, options, stem }) => {
     await page.goto(`${service.url}/stimuli?${address}`);
     const files = await makeFile();
     const bits = address.includes('bits=16') ? 16 : 24;
@@ -65,9 +71,9 @@ describe('the stimuli', () => {
     const hash = createHash('sha256');
     for await (const block of encodeWavBlocks(stimulus.source, stimulus.encoding)) hash.update(block);
     const expected = hash.digest('hex');
-    const wav = files.get(`${name}-48k-${bits}bit.wav`)!;
+    const wav = files.get(`${stem}.wav`)!;
     expect(createHash('sha256').update(wav).digest('hex')).toBe(expected);
-    const descriptor = parseDescriptor(JSON.parse(files.get(`${name}-48k-${bits}bit.json`)!.toString()));
+    const descriptor = parseDescriptor(JSON.parse(files.get(`${stem}.json`)!.toString()));
     expect(descriptor).toEqual(stimulus.describe(expected));
   });
 

@@ -95,10 +95,31 @@ export function refusedKey(message: string): NumberKey | 'rate' | 'dither' | 'ch
   return message.includes('channels') ? 'channels' : null;
 }
 
-/** "level-steps-96k-24bit.wav" */
-export function fileNameOf({ name, options }: StimulusForm): string {
-  const { sampleRateHz, bitsPerSample, isQuick, isBare } = options;
+/** Parts of a file's name that tell a signal from the usual one of its kind. */
+function ownWords({ name, options }: StimulusForm): string[] {
+  const { defaults } = kindOf(name);
+  const number = (value: number): string => String(value).replace('.', '_');
+  const { lowFrequencyHz, highFrequencyHz, levelDbfs, ceilingDbfs, durationS, channels } = options;
+  const isPair = lowFrequencyHz !== undefined || highFrequencyHz !== undefined;
+  return [
+    options.frequencyHz === undefined ? null : `${number(options.frequencyHz)}hz`,
+    isPair
+      ? `${number(lowFrequencyHz ?? defaults.lowFrequencyHz ?? 0)}-${number(highFrequencyHz ?? defaults.highFrequencyHz ?? 0)}hz`
+      : null,
+    levelDbfs === undefined ? null : `${number(levelDbfs)}db`,
+    ceilingDbfs === undefined ? null : `max${number(ceilingDbfs)}db`,
+    durationS === undefined ? null : `${number(durationS)}s`,
+    channels === undefined || channels === 'both' ? null : channels,
+    options.dither === 'none' ? 'undithered' : null,
+    options.seed === undefined ? null : `seed${options.seed}`,
+  ].filter((word) => word !== null);
+}
+
+/** "level-steps-96k-24bit.wav"; what differs from the usual stands in the name, so that no two signals share one. */
+export function fileNameOf(form: StimulusForm): string {
+  const { sampleRateHz, bitsPerSample, isQuick, isBare } = form.options;
   const rate = `${sampleRateHz / 1000}k`.replace('.', '_');
   const bits = bitsPerSample === '32f' ? 'float' : `${bitsPerSample}bit`;
-  return `${[name, isQuick ? 'quick' : null, rate, bits, isBare ? 'bare' : null].filter((part) => part !== null).join('-')}.wav`;
+  const words = [form.name, isQuick ? 'quick' : null, rate, bits, ...ownWords(form), isBare ? 'bare' : null];
+  return `${words.filter((word) => word !== null).join('-')}.wav`;
 }
