@@ -179,6 +179,17 @@ describe('worker', () => {
     await done(id);
   });
 
+  it('takes up a job whose lock nobody heard of: the answer was lost with its connection', async () => {
+    const { id } = await bench.uploaded(wavBytes({ seed: 83 }));
+    await bench.dataSource.query(
+      `UPDATE graphile_worker._private_jobs SET locked_at = now() - interval '1 minute', locked_by = 'nobody'
+       WHERE key IN (SELECT 'analysis:' || id FROM analysis_job WHERE capture_id = $1)`,
+      [id],
+    );
+    await start();
+    await done(id);
+  });
+
   it('goes on, and its events with it, after the database has dropped every connection', async () => {
     const worker = await start();
     const seen: string[] = [];

@@ -11,6 +11,9 @@ const LOST_AFTER_S = 15;
 /** The queue doubles its wait at each lost connection; once the database is back, nobody need wait longer than this. */
 const LONGEST_WAIT_S = 5;
 
+/** A lock on a job that has not begun after this belongs to nobody. */
+const UNANSWERED_AFTER_S = 8;
+
 /**
  * Keeps this worker's row alive and takes back what dead workers held.
  *
@@ -84,6 +87,13 @@ export class Heartbeat {
         `UPDATE graphile_worker._private_jobs SET run_at = now()
          WHERE key LIKE 'analysis:%' AND locked_at IS NULL AND run_at > now() + $1 * interval '1 second'`,
         [LONGEST_WAIT_S],
+      );
+      // A worker marks its job as running at once: a lock on one that still waits is a lock whose answer was lost on the way.
+      await tx.query(
+        `UPDATE graphile_worker._private_jobs AS q SET locked_at = NULL, locked_by = NULL, run_at = now()
+         WHERE q.locked_at < now() - $1 * interval '1 second'
+           AND EXISTS (SELECT 1 FROM analysis_job AS j WHERE q.key = 'analysis:' || j.id AND j.state = 'queued')`,
+        [UNANSWERED_AFTER_S],
       );
       const lost = await tx.query<{ id: string; priority: number }[]>(
         `SELECT j.id, j.priority FROM analysis_job AS j
