@@ -86,7 +86,10 @@ describe('the stimuli', () => {
     await page
       .getByRole('alert')
       .getByText(/The level must be from -160 to 0 dBFS/)
+      .first()
       .waitFor();
+    await page.keyboard.press('Escape');
+    await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
     await page.getByRole('button', { name: /^Level, / }).click();
     await page.getByRole('textbox', { name: 'Level, dBFS' }).fill('-12');
     await page.keyboard.press('Enter');
