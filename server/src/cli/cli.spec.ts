@@ -4,6 +4,7 @@ import { createServer, type Server } from 'node:http';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { BenchRecord, StimulusDescriptor } from '@benchlark/dsp';
+import { printRecord } from './print-record';
 import { runCli } from './run-cli';
 
 const folder = mkdtempSync(join(tmpdir(), 'benchlark-cli-'));
@@ -108,6 +109,34 @@ describe('analyse', () => {
     expect(out).toMatch(/THD\s+-2\d\.\d+.*dB/);
     expect(out).toContain('Harmonic 2');
   });
+
+  it('cuts a programme up, proposes what it shows, and agrees with its own record', async () => {
+    const made = await cli(
+      'stimulus',
+      'programme',
+      '--quick',
+      '--rate',
+      '48000',
+      '--bits',
+      '24',
+      '--out',
+      'programme.wav',
+    );
+    expect(made.code).toBe(0);
+    expect(
+      (await cli('practice', 'programme.wav', 'pinched.wav', '--device', 'pinched-converter')).code,
+    ).toBe(0);
+    const json = await cli('analyse', 'pinched.wav', '--json');
+    writeFileSync(join(folder, 'pinched.json'), json.out);
+    const out = printRecord(JSON.parse(json.out) as BenchRecord);
+    // The device clips at 0.763 of full scale: 20 lg 0.763 = -2.35 dBFS.
+    expect(out).toContain('fault: Left is cut off on its positive half from -2.35 dBFS up');
+    for (const measure of ['tone', 'level-steps', 'sweep', 'separation', 'two-tone', 'jitter']) {
+      expect(out).toContain(`== ${measure} (`);
+    }
+    expect(out).toMatch(/played\s+deviation dB\s+THD dB/);
+    expect((await cli('verify', 'pinched.json', 'pinched.wav')).code).toBe(0);
+  }, 180_000);
 
   it('takes channel, segment and band from the command line into the settings', async () => {
     const { out } = await cli(
