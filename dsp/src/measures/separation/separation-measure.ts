@@ -7,6 +7,7 @@ import { sweepDurationS } from '../../stimulus/sweep-signal.js';
 import type { AnalysisContext, AnalysisSettings, Measure } from '../measure.js';
 import { alignStimulus, type AlignedStimulus } from '../shared/align-stimulus.js';
 import { assembleRecord } from '../shared/assemble-record.js';
+import type { ImpulseResponse } from '../shared/deconvolution/create-deconvolver.js';
 import { findArrival, phaseSlope, type Arrival } from '../shared/deconvolution/find-arrival.js';
 import { powerAt, transformCut } from '../shared/deconvolution/frequency-response.js';
 import { sweepOfPart } from '../shared/deconvolution/sweep-of-part.js';
@@ -38,6 +39,15 @@ const POINTS_PER_OCTAVE = 24;
 const OWN_S = 0.1;
 const DELAY_BAND_HZ = [200, 8000] as const;
 const USABLE_SHARE = 0.45;
+/** 20 dB: no leak, and joined channels have it alike. */
+const FAR_MORE = 10;
+
+interface Arrivals {
+  readonly left: Arrival;
+  readonly right: Arrival;
+  /** Whether each channel's sweep came in the other channel. */
+  readonly isExchanged: boolean;
+}
 
 async function analyseSeparation(
   source: SampleSource,
@@ -185,28 +195,45 @@ function isNegative({ separationDb }: LeakReading): boolean {
 }
 
 /** Arrivals of the driven channels; where they hold nothing, those of their neighbours (swapped cables). */
-function findArrivals(left: TurnResponses, right: TurnResponses): { left: Arrival; right: Arrival } {
-  const inLeft =
-    findArrival(left.left, SEARCH_S, left.highHz) ?? findArrival(left.right, SEARCH_S, left.highHz);
-  const inRight =
-    findArrival(right.right, SEARCH_S, right.highHz) ?? findArrival(right.left, SEARCH_S, right.highHz);
+function findArrivals(left: TurnResponses, right: TurnResponses): Arrivals {
+  const inLeft = findCarrier(left.left, left.right, left.highHz);
+  const inRight = findCarrier(right.right, right.left, right.highHz);
   if (inLeft === null || inRight === null) {
     throw new DspInputError('NOTHING_MEASURABLE', 'a channel’s turn holds no sweep', {
       remedy: 'Check that both channels were connected and recorded.',
     });
   }
-  return { left: inLeft, right: inRight };
+  return {
+    left: inLeft.arrival,
+    right: inRight.arrival,
+    isExchanged: !inLeft.isOwn && !inRight.isOwn,
+  };
+}
+
+/** A turn's sweep arrives in its own channel, unless the other one holds far more of it. */
+function findCarrier(
+  own: ImpulseResponse,
+  other: ImpulseResponse,
+  highHz: number,
+): { arrival: Arrival; isOwn: boolean } | null {
+  const inOwn = findArrival(own, SEARCH_S, highHz);
+  const inOther = findArrival(other, SEARCH_S, highHz);
+  if (inOther !== null && inOther.peak > FAR_MORE * (inOwn?.peak ?? 0)) {
+    return { arrival: inOther, isOwn: false };
+  }
+  return inOwn === null ? null : { arrival: inOwn, isOwn: true };
 }
 
 /** Compares each channel's own response in its own turn. */
 function compareOwn(
   left: TurnResponses,
   right: TurnResponses,
-  arrivals: { readonly left: Arrival; readonly right: Arrival },
+  arrivals: Arrivals,
 ): { balanceDb: (hz: number) => number; delayS: number; isInverted: boolean } {
   const cut = { beforeS: OWN_S, afterS: OWN_S };
-  const one = transformCut(left.left, { ...cut, centreS: arrivals.left.delayS });
-  const other = transformCut(right.right, { ...cut, centreS: arrivals.left.delayS });
+  const [ofLeft, ofRight] = arrivals.isExchanged ? [right.left, left.right] : [left.left, right.right];
+  const one = transformCut(ofLeft, { ...cut, centreS: arrivals.left.delayS });
+  const other = transformCut(ofRight, { ...cut, centreS: arrivals.left.delayS });
   const re = one.re.map((x, k) => other.re[k] * x + other.im[k] * one.im[k]);
   const im = one.re.map((x, k) => other.im[k] * x - other.re[k] * one.im[k]);
   const { delayS, phase } = phaseSlope(

@@ -82,6 +82,11 @@ describe('separation', () => {
     const record = await measure([...leak(channels, 1e-3)].reverse());
     expect(between(record, 'separationLeftToRightAt1kHzDb')).toBeLessThan(-40);
     expect(warningCodes(record)).toContain('channels-swapped');
+    // What each channel recorded is compared all the same: the sweep came through both alike.
+    expect(Math.abs(between(record, 'balanceDb'))).toBeLessThan(0.01);
+    expect(Math.abs(between(record, 'interchannelDelayS') * RATE_HZ)).toBeLessThan(0.01);
+    expect(record.between.figures['interchannelPolarity']).toBe('same');
+    expect(record.stimulus?.polarity).toBe('same');
   });
 });
 

@@ -1,4 +1,4 @@
-import type { Figures, Trace } from '../../record/record.js';
+import type { FigureUncertainty, Figures, Trace } from '../../record/record.js';
 import { powerToDb } from '../../level/decibel.js';
 import type { SweepSignal } from '../../stimulus/sweep-signal.js';
 import type { ImpulseResponse } from '../shared/deconvolution/create-deconvolver.js';
@@ -6,6 +6,14 @@ import { findArrival, type Arrival } from '../shared/deconvolution/find-arrival.
 import { powerAt, transformCut, type FrequencyResponse } from '../shared/deconvolution/frequency-response.js';
 import { gridBins, levelsDb } from '../shared/deconvolution/response-grid.js';
 import { wrapPhase } from '../shared/tone-tracker.js';
+import { combineUncertainty } from '../shared/uncertainty.js';
+import {
+  crossingComponents,
+  flatnessComponents,
+  levelComponents,
+  readResponseNoise,
+  type ResponseNoise,
+} from './response-uncertainty.js';
 
 export const SWEEP_FIGURES = [
   'flatnessDb',
@@ -45,6 +53,7 @@ export interface ResponseOptions {
 export interface MeasuredResponse {
   readonly arrival: Arrival;
   readonly figures: Figures;
+  readonly uncertainty: Readonly<Record<string, FigureUncertainty>>;
   readonly traces: Readonly<Record<string, Trace>>;
   /** Level at 1 kHz against the sweep as sent, dB. */
   readonly gainDb: number;
@@ -61,14 +70,15 @@ export function measureResponse(impulse: ImpulseResponse, options: ResponseOptio
   if (arrival === null) return null;
   const rateS = sweep.rateS / speed;
   const beforeS = Math.min(BEFORE_S, BEFORE_SHARE * rateS * Math.LN2);
-  const linear = transformCut(impulse, { centreS: arrival.delayS, beforeS, afterS: AFTER_S });
+  const cut = { centreS: arrival.delayS, beforeS, afterS: AFTER_S };
+  const linear = transformCut(impulse, cut);
   const db = levelsDb(linear);
   const reference = powerToDb(powerAt(linear, REFERENCE_HZ));
   const from1kHz = db.map((level) => level - reference);
   return {
     arrival,
     gainDb: reference,
-    figures: responseFigures(linear, from1kHz, options),
+    ...responseFigures(linear, from1kHz, options, readResponseNoise(impulse, arrival.delayS, linear, cut)),
     traces: {
       response: responseTrace(linear, from1kHz, options),
       ...(options.isClockKnown ? { phase: phaseTrace(linear, options, arrival.isInverted) } : {}),
@@ -82,23 +92,41 @@ function responseFigures(
   { binWidthHz }: FrequencyResponse,
   db: Float64Array,
   { lowHz, highHz, bandLowHz, bandHighHz }: ResponseOptions,
-): Figures {
+  noiseAt: ResponseNoise,
+): Pick<MeasuredResponse, 'figures' | 'uncertainty'> {
   const first = Math.ceil(Math.max(lowHz, bandLowHz) / binWidthHz);
   const last = Math.floor(Math.min(highHz, bandHighHz) / binWidthHz);
-  let [least, greatest] = [Infinity, -Infinity];
+  let [least, greatest] = [first, first];
   for (let k = first; k <= last; k++) {
-    least = Math.min(least, db[k]);
-    greatest = Math.max(greatest, db[k]);
+    if (db[k] < db[least]) least = k;
+    if (db[k] > db[greatest]) greatest = k;
   }
   const at = (hz: number): number | null =>
     hz >= lowHz && hz <= highHz ? valueAt(db, hz / binWidthHz) : null;
-  return {
-    flatnessDb: last >= first ? (greatest - least) / 2 : null,
-    minus3DbLowHz: crossing(db, binWidthHz, -1, lowHz),
-    minus3DbHighHz: crossing(db, binWidthHz, 1, highHz),
+  const low = crossing(db, binWidthHz, -1, lowHz);
+  const high = crossing(db, binWidthHz, 1, highHz);
+  const figures = {
+    flatnessDb: last >= first ? (db[greatest] - db[least]) / 2 : null,
+    minus3DbLowHz: low?.frequencyHz ?? null,
+    minus3DbHighHz: high?.frequencyHz ?? null,
     levelAt20HzDb: at(20),
     levelAt20kHzDb: at(20_000),
   };
+  const components = {
+    flatnessDb: flatnessComponents(noiseAt, greatest * binWidthHz, least * binWidthHz),
+    minus3DbLowHz:
+      low === null ? [] : crossingComponents(noiseAt, low.frequencyHz, REFERENCE_HZ, low.dbPerHz),
+    minus3DbHighHz:
+      high === null ? [] : crossingComponents(noiseAt, high.frequencyHz, REFERENCE_HZ, high.dbPerHz),
+    levelAt20HzDb: levelComponents(noiseAt, 20, REFERENCE_HZ),
+    levelAt20kHzDb: levelComponents(noiseAt, 20_000, REFERENCE_HZ),
+  };
+  const uncertainty: Record<string, FigureUncertainty> = {};
+  for (const key of SWEEP_FIGURES) {
+    const combined = figures[key] === null ? null : combineUncertainty(components[key]);
+    if (combined !== null) uncertainty[key] = combined;
+  }
+  return { figures, uncertainty };
 }
 
 function valueAt(db: Float64Array, place: number): number {
@@ -108,15 +136,27 @@ function valueAt(db: Float64Array, place: number): number {
 
 const HALF_POWER_DB = -3;
 
+interface Crossing {
+  readonly frequencyHz: number;
+  /** Steepness of the response over this share of an octave around it. */
+  readonly dbPerHz: number;
+}
+
+const STEEPNESS_OCTAVES = 1 / 12;
+
 /** Where the response first falls by 3 dB, going out from 1 kHz; between bins by dB over the logarithm of frequency. */
-function crossing(db: Float64Array, binWidthHz: number, step: 1 | -1, endHz: number): number | null {
+function crossing(db: Float64Array, binWidthHz: number, step: 1 | -1, endHz: number): Crossing | null {
   let k = Math.round(REFERENCE_HZ / binWidthHz);
   const isInside = (): boolean => (step > 0 ? k * binWidthHz <= endHz : k * binWidthHz >= endHz && k > 0);
   while (isInside() && db[k] > HALF_POWER_DB) k += step;
   if (!isInside()) return null;
   const before = k - step;
   const share = (HALF_POWER_DB - db[before]) / (db[k] - db[before]);
-  return binWidthHz * before * (k / before) ** share;
+  const frequencyHz = binWidthHz * before * (k / before) ** share;
+  const low = Math.min(before, k, Math.floor((frequencyHz * 2 ** -STEEPNESS_OCTAVES) / binWidthHz));
+  const high = Math.max(before, k, Math.ceil((frequencyHz * 2 ** STEEPNESS_OCTAVES) / binWidthHz));
+  const top = Math.min(db.length - 1, high);
+  return { frequencyHz, dbPerHz: (db[top] - db[low]) / ((top - low) * binWidthHz) };
 }
 
 function responseTrace(

@@ -151,7 +151,7 @@ function finishSweep(
   if (response === null) {
     return emptyChannel(channel, SWEEP_FIGURES, level.samplePeak === 0 ? 'channel-silent' : 'tone-missing');
   }
-  const { figures, traces } = response;
+  const { figures, uncertainty, traces } = response;
   const open = (['minus3DbLowHz', 'minus3DbHighHz'] as const).filter((key) => figures[key] === null);
   const isClipped = isOverloaded({ level, tone: { frequencyHz: 20 } }, capture);
   const limits: Record<string, FigureLimit> = isClipped
@@ -162,7 +162,7 @@ function finishSweep(
     ...(open.length > 0 ? [makeWarning('no-half-power-point', { channel }, { channel, figures: open })] : []),
   ];
   return {
-    result: { channel, figures, limits, uncertainty: {}, harmonics: [], components: [], traces },
+    result: { channel, figures, limits, uncertainty, harmonics: [], components: [], traces },
     warnings,
   };
 }

@@ -4,6 +4,7 @@ import { pass } from '../../practice/testing/pass.js';
 import type { ChannelResult } from '../../record/record.js';
 import { createStimulus } from '../../stimulus/create-stimulus.js';
 import type { StimulusOptions } from '../../stimulus/stimulus-options.js';
+import { mix, whiteNoise } from '../../testing/signals.js';
 import { analyseSamples, numberOf, warningCodes, type AnalyseOptions } from '../testing/analyse-samples.js';
 import { sweepMeasure } from './sweep-measure.js';
 
@@ -89,6 +90,41 @@ describe('a straight wire', () => {
     const [left] = (await measure(channels)).channels;
     expect(greatest(left, 'response', 20, 20_000, (_, y) => y)).toBeLessThan(0.05);
   });
+});
+
+describe('what noise leaves open', () => {
+  // The scatter of repeats is the check: type A against the type B that each record claims (JCGM 100:2008, 4.2 and 4.3).
+  it('is claimed as repeats scatter', async () => {
+    const keys = ['flatnessDb', 'minus3DbHighHz', 'levelAt20HzDb', 'levelAt20kHzDb'] as const;
+    const values = new Map<string, number[]>(keys.map((key) => [key, []]));
+    const claimed = new Map<string, number[]>(keys.map((key) => [key, []]));
+    const shape = { type: 'low-pass', frequencyHz: 12_000, order: 1 } as const;
+    const { channels: quiet } = await play([{ kind: 'filter', channel: 'both', ...shape }], {}, 48_000);
+    for (let seed = 1; seed <= 8; seed++) {
+      const noisy = quiet.map((samples, n) =>
+        mix(samples, whiteNoise(samples.length, Math.SQRT1_2 * 10 ** (-40 / 20), 2 * seed + n)),
+      );
+      for (const channel of (await measure(noisy, {}, 48_000)).channels) {
+        for (const key of keys) {
+          values.get(key)?.push(numberOf(channel, key));
+          claimed.get(key)?.push(channel.uncertainty[key].standard);
+        }
+      }
+    }
+    for (const key of keys) {
+      const drawn = values.get(key) ?? [];
+      const mean = drawn.reduce((sum, value) => sum + value, 0) / drawn.length;
+      const spread = Math.sqrt(
+        drawn.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (drawn.length - 1),
+      );
+      const claim = Math.sqrt((claimed.get(key) ?? []).reduce((sum, u) => sum + u * u, 0) / drawn.length);
+      // Sixteen draws know their spread to 18 %: three times that, either way. A span's ends and the first point below -3 dB
+      // are picked among many that noise moves, and scatter less than one of them.
+      const isPicked = key === 'flatnessDb' || key === 'minus3DbHighHz';
+      expect(spread / claim, key).toBeLessThan(1.55);
+      expect(spread / claim, key).toBeGreaterThan(isPicked ? 0.2 : 0.45);
+    }
+  }, 60_000);
 });
 
 describe('known filters', () => {

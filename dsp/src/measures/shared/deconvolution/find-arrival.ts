@@ -8,6 +8,8 @@ export interface Arrival {
   /** Growth of the delay with ln f, seconds; 0 unless it was sought. */
   readonly perLogS: number;
   readonly isInverted: boolean;
+  /** Magnitude of the highest sample. */
+  readonly peak: number;
 }
 
 /** Around the highest sample: a filter's own phase lasts longer after it. */
@@ -44,7 +46,7 @@ export function findArrival(
   const response = transformCut(impulse, { centreS: rough, beforeS: BEFORE_S, afterS: AFTER_S });
   const isInverted = samples[(at + total) % total] < 0;
   const { delayS, perLogS } = fitExcessDelay(response, { lowHz: LOW_HZ, highHz, isInverted, seeksClock });
-  return { delayS: rough + delayS, perLogS, isInverted };
+  return { delayS: rough + delayS, perLogS, isInverted, peak: best };
 }
 
 /**

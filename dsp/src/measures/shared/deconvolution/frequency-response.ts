@@ -63,6 +63,15 @@ function turnBack(re: Float64Array, im: Float64Array, radiansPerBin: number): vo
   }
 }
 
+/** Energy of a cut's window: the sum of its squared gains. */
+export function cutEnergy({ beforeS, afterS }: ImpulseCut, sampleRateHz: number): number {
+  const before = Math.round(beforeS * sampleRateHz);
+  const after = Math.round(afterS * sampleRateHz);
+  let energy = 0;
+  for (let n = -before; n <= after; n++) energy += taperGain(Math.abs(n), n < 0 ? before : after) ** 2;
+  return energy;
+}
+
 /** Power of a response at a frequency, between bins by its logarithm. */
 export function powerAt({ re, im, binWidthHz }: FrequencyResponse, frequencyHz: number): number {
   const place = frequencyHz / binWidthHz;
