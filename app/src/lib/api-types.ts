@@ -1036,6 +1036,44 @@ export interface components {
       code: string;
       message: string;
     };
+    TakeEndDto: {
+      label: string;
+      sampleRateHz: number;
+      channelCount: number;
+      /** @description The grid that the samples sit on, in words */
+      resolution?: string;
+    };
+    TakeBreakDto: {
+      kind: string;
+      fromS: number;
+      toS: number;
+    };
+    TakeNoteDto: {
+      atS: number;
+      text: string;
+    };
+    TakeSeriesDto: {
+      id: string;
+      index: number;
+      count: number;
+    };
+    TakeDto: {
+      /** @enum {string} */
+      schema: 'benchlark-take/1';
+      kind: string;
+      measure: components['schemas']['MeasureId'];
+      settings: {
+        [key: string]: unknown;
+      };
+      /** Format: date-time */
+      startedAt: string;
+      isPractice: boolean;
+      input: components['schemas']['TakeEndDto'];
+      output: components['schemas']['TakeEndDto'];
+      breaks: components['schemas']['TakeBreakDto'][];
+      notes: components['schemas']['TakeNoteDto'][];
+      series: components['schemas']['TakeSeriesDto'] | null;
+    };
     CaptureLinkDto: {
       /** Format: uuid */
       id: string;
@@ -1099,6 +1137,10 @@ export interface components {
       frameCount: number;
       durationS: number;
       fileWarnings: components['schemas']['FileWarningDto'][];
+      /** @description Null for an upload */
+      take: components['schemas']['TakeDto'] | null;
+      /** @description A practice device was recorded, no real unit */
+      isPractice: boolean;
       /** @description Other captures of the very same bytes */
       sameBytesAs: components['schemas']['CaptureLinkDto'][];
       evidence: components['schemas']['Evidence'];
@@ -1132,6 +1174,8 @@ export interface components {
       /** Format: uuid */
       rigId?: string;
       note?: string;
+      /** @description JSON, benchlark-take/1: how a take of the Live page was made, and what its first analysis measures */
+      take?: string;
       /**
        * Format: binary
        * @description The WAV file; the last field of the form

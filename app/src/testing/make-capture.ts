@@ -21,6 +21,8 @@ export function makeCapture(change: Partial<Capture> = {}): Capture {
     frameCount: 480_000,
     durationS: 5,
     fileWarnings: [],
+    take: null,
+    isPractice: false,
     sameBytesAs: [],
     evidence: 'sound',
     checkedAt: null,

@@ -35,7 +35,7 @@ const RECOGNITION_SHARE = 0.1;
 export async function analyseCapture(
   wav: WavFile,
   sha256: string,
-  { measure, settings = {}, descriptor = null }: CaptureRequest,
+  { measure, settings = {}, descriptor = settings.descriptor ?? null }: CaptureRequest,
   { onProgress, signal }: Pick<AnalysisContext, 'onProgress' | 'signal'> = {},
 ): Promise<CaptureAnalysis> {
   const run = async (id: MeasureId, done: number, marks?: MarkMatch | null): Promise<BenchRecord> => {

@@ -14,6 +14,8 @@ export interface AnalysisSettings {
   readonly channel?: 'left' | 'right' | 'all';
   readonly calibration?: Calibration | null;
   readonly baseline?: BenchRecord | null;
+  /** Of the stimulus that was played; a descriptor in the request comes before it. */
+  readonly descriptor?: StimulusDescriptor | null;
 }
 
 export interface AnalysisContext {

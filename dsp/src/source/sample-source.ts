@@ -31,4 +31,6 @@ export interface CaptureFacts {
   readonly sampleFormat: SampleFormat;
   readonly frameCount: number;
   readonly durationS: number;
+  /** Present and true where the file itself says that a practice device was recorded. */
+  readonly isPractice?: true;
 }

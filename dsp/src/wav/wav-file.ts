@@ -46,6 +46,9 @@ export interface WavFile extends SampleSource {
   readonly warnings: readonly Warning[];
 }
 
+/** How the `bext` description of a recording of a practice device begins. */
+export const PRACTICE_DESCRIPTION = 'Practice take, no real unit.';
+
 /**
  * States what a capture is, as its record does.
  *
@@ -61,5 +64,6 @@ export function captureFactsOf(wav: WavFile, sha256: string): CaptureFacts {
     sampleFormat: wav.format.sampleFormat,
     frameCount: wav.frameCount,
     durationS: wav.frameCount / wav.sampleRateHz,
+    ...(wav.broadcast?.description.startsWith(PRACTICE_DESCRIPTION) === true ? { isPractice: true } : {}),
   };
 }

@@ -5,6 +5,7 @@ import type { JobState } from '../jobs/analysis-job.entity';
 import type { Evidence } from '../storage/stored-object.entity';
 import type { CaptureState, FileWarning } from './capture.entity';
 import type { CaptureDto } from './dto/capture.dto';
+import type { Take } from './take';
 
 /** A capture with all it belongs to, as one row. */
 export interface CaptureRow {
@@ -26,6 +27,8 @@ export interface CaptureRow {
   frameCount: string;
   durationS: number;
   fileWarnings: FileWarning[];
+  take: Take | null;
+  isPractice: boolean;
   sameBytesAs: { id: string; number: number }[];
   evidence: Evidence;
   checkedAt: Date | null;
@@ -54,7 +57,7 @@ export const CAPTURE_COLUMNS = `
   ${named('k')} AS condition, ${named('g')} AS rig,
   c.sample_rate_hz AS "sampleRateHz", c.channel_count AS "channelCount", c.bits_per_sample AS "bitsPerSample",
   c.sample_format AS "sampleFormat", c.frame_count AS "frameCount", c.duration_s AS "durationS",
-  c.file_warnings AS "fileWarnings", o.evidence, o.checked_at AS "checkedAt", c.state, c.job_id AS "jobId",
+  c.file_warnings AS "fileWarnings", c.take, c.is_practice AS "isPractice", o.evidence, o.checked_at AS "checkedAt", c.state, c.job_id AS "jobId",
   (SELECT coalesce(json_agg(json_build_object('id', t.id, 'number', t.number) ORDER BY t.number), '[]')
     FROM capture AS t WHERE t.sha256 = c.sha256 AND t.id <> c.id) AS "sameBytesAs",
   j.state AS "jobState", j.progress, j.attempts, j.failure_code AS "failureCode",
@@ -91,6 +94,8 @@ export function toCaptureDto(row: JoinedCaptureRow): CaptureDto {
     frameCount: Number(row.frameCount),
     durationS: row.durationS,
     fileWarnings: row.fileWarnings,
+    take: row.take,
+    isPractice: row.isPractice,
     sameBytesAs: row.sameBytesAs,
     evidence: row.evidence,
     checkedAt: row.checkedAt?.toISOString() ?? null,

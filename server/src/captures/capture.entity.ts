@@ -17,6 +17,7 @@ import { Rig } from '../rigs/rig.entity';
 import { bigintAsNumber, StoredObject } from '../storage/stored-object.entity';
 import { UnitCondition } from '../units/unit-condition.entity';
 import { Unit } from '../units/unit.entity';
+import type { Take } from './take';
 
 export const CAPTURE_STATES = ['queued', 'analysing', 'done', 'failed', 'cancelled'] as const;
 export type CaptureState = (typeof CAPTURE_STATES)[number];
@@ -106,6 +107,14 @@ export class Capture {
 
   @Column({ name: 'file_warnings', type: 'json' })
   fileWarnings!: readonly FileWarning[];
+
+  /** Null for an upload. */
+  @Column({ name: 'take', type: 'json', nullable: true })
+  take!: Take | null;
+
+  /** A practice device was measured, by what the file or the take says: never evidence about a real unit. */
+  @Column({ name: 'is_practice', type: 'boolean', default: false })
+  isPractice!: boolean;
 
   @Column({ name: 'state', type: 'text', default: 'queued' })
   state!: CaptureState;

@@ -13,6 +13,7 @@ import { enterObject, lockObject } from '../storage/stored-objects';
 import { Capture, type FileWarning } from './capture.entity';
 import type { UploadFieldsDto } from './dto/file-capture.dto';
 import { resolveFiling } from './filing.service';
+import { parseTake, type Take } from './take';
 import { refreshFiling } from './refresh-filing';
 import { checkUpload } from './upload/check-upload';
 import type { ReceivedUpload } from './upload/capture-upload.interceptor';
@@ -52,11 +53,12 @@ export class CapturesService {
     if (known) return known;
     const { facts, fileWarnings } = await checkUpload(file.path, file.sha256);
     // Wrong fields are found before the file is stored, so that nothing is kept for them.
+    const take = fields.take === undefined ? null : parseTake(fields.take);
     await resolveFiling(this.dataSource.manager, filingOf(fields));
     await this.store.keep(file.path, file.sha256);
     try {
       return await this.dataSource.transaction(async (tx) => {
-        const id = await this.enter(tx, upload, facts, fileWarnings);
+        const id = await this.enter(tx, upload, { facts, fileWarnings, take });
         if (idempotencyKey) {
           await tx.insert(UploadKey, {
             personId: person.id,
@@ -78,8 +80,7 @@ export class CapturesService {
   private async enter(
     tx: EntityManager,
     { file, fields, person, actor = null }: Upload,
-    facts: CaptureFacts,
-    fileWarnings: FileWarning[],
+    { facts, fileWarnings, take }: { facts: CaptureFacts; fileWarnings: FileWarning[]; take: Take | null },
   ): Promise<string> {
     const { sha256, sizeBytes } = file;
     await lockObject(tx, sha256);
@@ -103,13 +104,15 @@ export class CapturesService {
       durationS: facts.durationS,
       fileWarnings,
       hasWarnings: fileWarnings.length > 0,
+      take,
+      isPractice: facts.isPractice === true || take?.isPractice === true,
     });
     const captureId = (identifiers[0] as { id: string }).id;
     await refreshFiling(tx, 'id', captureId);
     await this.requests.request(tx, {
       captureId,
-      measure: null,
-      settings: {},
+      measure: take?.measure ?? null,
+      settings: take?.settings ?? {},
       requestedById: person.id,
       priority: PRIORITY.upload,
     });
@@ -148,11 +151,11 @@ function shownName(name: string): string {
 }
 
 function fingerprintOf({ file, fields }: Upload): string {
-  const { unitId, conditionId, rigId, note } = fields;
+  const { unitId, conditionId, rigId, note, take } = fields;
   return createHash('sha256')
     .update(
       JSON.stringify(
-        [file.sha256, file.fileName, unitId, conditionId, rigId, note].map((part) => part ?? null),
+        [file.sha256, file.fileName, unitId, conditionId, rigId, note, take].map((part) => part ?? null),
       ),
     )
     .digest('hex');

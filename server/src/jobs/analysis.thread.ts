@@ -22,7 +22,7 @@ async function analyse({ path, sha256, measure, settings }: AnalysisInput): Prom
     const { record, recognition } = await analyseCapture(
       wav,
       sha256,
-      { measure: measure ?? undefined, settings, descriptor: null },
+      { measure: measure ?? undefined, settings },
       {
         onProgress: (share) =>
           say({ kind: 'progress', share: OVERVIEW_SHARE + share * (1 - OVERVIEW_SHARE) }),

@@ -39,12 +39,29 @@ export function assembleRecord(
   context: AnalysisContext,
   parts: RecordParts,
 ): BenchRecord {
-  const { sha256, sampleRateHz, channelCount, bitsPerSample, sampleFormat, frameCount, durationS } =
-    context.capture;
+  const {
+    sha256,
+    sampleRateHz,
+    channelCount,
+    bitsPerSample,
+    sampleFormat,
+    frameCount,
+    durationS,
+    isPractice,
+  } = context.capture;
   return {
     schema: RECORD_SCHEMA,
     dspVersion: DSP_VERSION,
-    capture: { sha256, sampleRateHz, channelCount, bitsPerSample, sampleFormat, frameCount, durationS },
+    capture: {
+      sha256,
+      sampleRateHz,
+      channelCount,
+      bitsPerSample,
+      sampleFormat,
+      frameCount,
+      durationS,
+      ...(isPractice === true ? { isPractice } : {}),
+    },
     measure: parts.measure,
     settings: {
       fromS: parts.range.from / source.sampleRateHz,

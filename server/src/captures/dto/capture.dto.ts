@@ -1,6 +1,7 @@
 import { ApiProperty } from '@nestjs/swagger';
 import { RecordSummaryDto } from '../../records/dto/record-summary.dto';
 import { EVIDENCE_STATES, type Evidence } from '../../storage/stored-object.entity';
+import { TakeDto } from './take.dto';
 import { CAPTURE_STATES, type CaptureState } from '../capture.entity';
 
 export class UploaderDto {
@@ -114,6 +115,12 @@ export class CaptureDto {
 
   @ApiProperty({ type: [FileWarningDto] })
   fileWarnings!: FileWarningDto[];
+
+  @ApiProperty({ type: TakeDto, nullable: true, description: 'Null for an upload' })
+  take!: TakeDto | null;
+
+  @ApiProperty({ description: 'A practice device was recorded, no real unit' })
+  isPractice!: boolean;
 
   @ApiProperty({ type: [CaptureLinkDto], description: 'Other captures of the very same bytes' })
   sameBytesAs!: CaptureLinkDto[];

@@ -1,4 +1,5 @@
-import { ApiProperty } from '@nestjs/swagger';
+import { ApiProperty, ApiPropertyOptional } from '@nestjs/swagger';
+import { IsOptional, IsString } from 'class-validator';
 import { ClearableIdField, FormIdField, NotesField } from '../../common/dto-rules';
 
 const NOTE_LENGTH_MAX = 2_000;
@@ -31,6 +32,15 @@ export class UploadFieldsDto {
 
   @NotesField(NOTE_LENGTH_MAX)
   note?: string;
+
+  @ApiPropertyOptional({
+    type: String,
+    description:
+      'JSON, benchlark-take/1: how a take of the Live page was made, and what its first analysis measures',
+  })
+  @IsOptional()
+  @IsString()
+  take?: string;
 }
 
 /** An upload as the document describes it. */

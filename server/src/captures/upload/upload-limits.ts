@@ -2,7 +2,7 @@ import type { IncomingMessage } from 'node:http';
 import { AppError } from '../../common/app-error';
 
 /** What the form around the file may take: boundaries, part headers, text fields. */
-export const FORM_BYTES_MAX = 64 * 1024;
+export const FORM_BYTES_MAX = 128 * 1024;
 
 /** Limits of the multipart form; the file's own stands beside them. */
 export const FORM_LIMITS = {
@@ -10,7 +10,7 @@ export const FORM_LIMITS = {
   fields: 8,
   parts: 10,
   fieldNameSize: 64,
-  fieldSize: 16 * 1024,
+  fieldSize: 64 * 1024,
   headerPairs: 32,
   fieldNestingDepth: 0,
   fieldArrayIndexLimit: 0,
