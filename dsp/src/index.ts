@@ -65,6 +65,11 @@ export {
 export * from './practice/device.js';
 export * from './practice/parse-device.js';
 export * from './practice/apply-device.js';
+export * from './practice/create-practice-stream.js';
 export * from './practice/practice-devices.js';
 export * from './stimulus/locate-marks.js';
+export * from './live/break-detector.js';
+export * from './live/input-grid.js';
+export * from './live/live-analyser.js';
+export * from './live/self-check.js';
 export { HIGHEST_RATE_HZ, LOWEST_RATE_HZ, MOST_CHANNELS } from './wav/read-format.js';

@@ -1,47 +1,10 @@
-import { DspInputError } from '../errors.js';
-import { createRandom, type Random } from '../random/create-random.js';
+import type { Random } from '../random/create-random.js';
 import { openMemorySource } from '../source/open-memory-source.js';
-import type { PracticeDevice, PracticeStage, StageChannel } from './device.js';
+import type { PracticeDevice, PracticeStage } from './device.js';
+import { channelsOf, checkFit, randomOf } from './fit-device.js';
 import { leakOf } from './stages/leak.js';
 import { delayChannels, jitterChannels, runFast } from './stages/retime.js';
-import { shapeChannel } from './stages/shape-channel.js';
-
-const CHANNEL_INDEX: Readonly<Record<Exclude<StageChannel, 'both'>, number>> = { left: 0, right: 1 };
-
-/** Odd, so that neighbouring stages and channels draw from seeds far apart. */
-const SEED_STRIDE = 0x9e3779b1;
-const MOST_CHANNELS = 64;
-
-function randomOf(seed: number, stageIndex: number, channelIndex: number): Random {
-  return createRandom((seed + Math.imul(stageIndex * MOST_CHANNELS + channelIndex + 1, SEED_STRIDE)) >>> 0);
-}
-
-function refuse(index: number, stage: PracticeStage, what: string): never {
-  throw new DspInputError('BAD_DEVICE', `the practice device's stages[${index}] (${stage.kind}) ${what}`);
-}
-
-/** Holds what a device asks for against the recording that it gets. */
-function checkFit(device: PracticeDevice, sampleRateHz: number, channelCount: number): void {
-  if (device.sampleRateHz !== null && device.sampleRateHz !== sampleRateHz) {
-    throw new DspInputError(
-      'BAD_DEVICE',
-      `the practice device's sampleRateHz is ${device.sampleRateHz}, and the recording's ${sampleRateHz} Hz`,
-    );
-  }
-  device.stages.forEach((stage, index) => {
-    if (stage.channel === 'right' && channelCount < 2) {
-      refuse(index, stage, 'has channel "right", and the recording has one channel');
-    }
-    if (stage.kind === 'crosstalk' && channelCount !== 2) {
-      refuse(index, stage, `needs two channels, and the recording has ${channelCount}`);
-    }
-    if (!('frequencyHz' in stage) || stage.frequencyHz === undefined) return;
-    const multiples = stage.kind === 'hum' ? stage.levelsDbfs.length : 1;
-    if (!(stage.frequencyHz * multiples < sampleRateHz / 2)) {
-      refuse(index, stage, `reaches ${stage.frequencyHz * multiples} Hz, beyond half of ${sampleRateHz} Hz`);
-    }
-  });
-}
+import { createShaper } from './stages/create-shaper.js';
 
 function surround(samples: Float64Array, frames: number): Float64Array {
   const longer = new Float64Array(samples.length + 2 * frames);
@@ -75,8 +38,7 @@ function applyStage(
   channels: Float64Array[],
   { sampleRateHz, leadFrames, randomFor }: StageContext,
 ): Float64Array[] {
-  const indices =
-    stage.channel === 'both' ? channels.map((_, index) => index) : [CHANNEL_INDEX[stage.channel]];
+  const indices = channelsOf(stage, channels.length);
   const retime = (retimed: readonly Float64Array[]) =>
     channels.map((samples, index) => retimed[indices.indexOf(index)] ?? samples);
   const chosen = indices.map((index) => channels[index]);
@@ -104,7 +66,7 @@ function applyStage(
     case 'tone':
     case 'amplitude-modulation':
     case 'quantise':
-      indices.forEach((index) => shapeChannel(stage, channels[index], sampleRateHz, randomFor(index)));
+      indices.forEach((index) => createShaper(stage, sampleRateHz, randomFor(index))(channels[index]));
       return channels;
   }
 }

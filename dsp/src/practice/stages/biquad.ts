@@ -7,15 +7,17 @@ export interface Biquad {
   readonly a2: number;
 }
 
-/** Runs samples through a section in place, in the transposed second direct form. */
-export function runBiquad({ b0, b1, b2, a1, a2 }: Biquad, samples: Float64Array): void {
+/** Makes a runner of a section in the transposed second direct form: in place, block by block, its state kept. */
+export function createBiquad({ b0, b1, b2, a1, a2 }: Biquad): (samples: Float64Array) => void {
   let s1 = 0;
   let s2 = 0;
-  for (let n = 0; n < samples.length; n++) {
-    const x = samples[n];
-    const y = b0 * x + s1;
-    s1 = b1 * x - a1 * y + s2;
-    s2 = b2 * x - a2 * y;
-    samples[n] = y;
-  }
+  return (samples) => {
+    for (let n = 0; n < samples.length; n++) {
+      const x = samples[n];
+      const y = b0 * x + s1;
+      s1 = b1 * x - a1 * y + s2;
+      s2 = b2 * x - a2 * y;
+      samples[n] = y;
+    }
+  };
 }

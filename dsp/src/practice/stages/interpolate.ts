@@ -24,6 +24,31 @@ function kernelAt(frames: number): number {
   return frames === 0 ? windowed : (windowed * Math.sin(Math.PI * frames)) / (Math.PI * frames);
 }
 
+/** Frames before and after a position that a value between frames is made from. */
+export const KERNEL_REACH = HALF_WIDTH;
+
+export interface Kernel {
+  /** Weights of the frames from base - KERNEL_REACH + 1 on; valid until the next call. */
+  tapsAt(fraction: number): Float64Array;
+}
+
+/** Makes a reader of the tabulated kernel; neighbouring calls of one fraction cost nothing. */
+export function createKernel(): Kernel {
+  const rows = createRows();
+  const taps = new Float64Array(TAPS);
+  let lastFraction = NaN;
+  return {
+    tapsAt: (fraction) => {
+      if (fraction !== lastFraction) {
+        const row = Math.floor(fraction * ROWS_PER_FRAME);
+        blendRows(rows, row, fraction * ROWS_PER_FRAME - row, taps);
+        lastFraction = fraction;
+      }
+      return taps;
+    },
+  };
+}
+
 /** Row r holds the kernel around the fraction (r - 1) / ROWS_PER_FRAME: one row more before 0, two after 1. */
 function createRows(): Float64Array[] {
   return Array.from({ length: ROWS_PER_FRAME + 3 }, (_, row) => {
@@ -68,24 +93,18 @@ export function interpolate(
   frameCount: number,
   positionOf: (frame: number) => number,
 ): Float64Array[] {
-  const rows = createRows();
-  const taps = new Float64Array(TAPS);
+  const kernel = createKernel();
   const results = channels.map(() => new Float64Array(frameCount));
-  let lastFraction = NaN;
   for (let n = 0; n < frameCount; n++) {
     const position = positionOf(n);
     // A hair below a whole frame rounds to a fraction of one: that is the next frame.
     const whole = Math.floor(position);
     const base = position - whole < 1 ? whole : whole + 1;
     const fraction = position - whole < 1 ? position - whole : 0;
-    if (fraction !== lastFraction) {
-      const row = Math.floor(fraction * ROWS_PER_FRAME);
-      blendRows(rows, row, fraction * ROWS_PER_FRAME - row, taps);
-      lastFraction = fraction;
-    }
     for (let c = 0; c < channels.length; c++) {
       // On the frame itself nothing is to be worked out, and nothing is lost.
-      results[c][n] = fraction === 0 ? (channels[c][base] ?? 0) : weigh(channels[c], base, taps);
+      results[c][n] =
+        fraction === 0 ? (channels[c][base] ?? 0) : weigh(channels[c], base, kernel.tapsAt(fraction));
     }
   }
   return results;
