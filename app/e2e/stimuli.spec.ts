@@ -61,7 +61,7 @@ describe('the stimuli', () => {
       name: 'difference-pair',
       address: 'name=difference-pair&rate=48000&bits=24&level=-6&duration=2',
       options: { levelDbfs: -6, durationS: 2 },
-      stem: 'difference-pair-48k-24bit--6db-2s',
+      stem: 'difference-pair-48k-24bit-minus6db-2s',
     },
   ])('$name comes as the very bytes that dsp writes', async ({ name, address, options, stem }) => {
     await page.goto(`${service.url}/stimuli?${address}`);
@@ -85,7 +85,7 @@ describe('the stimuli', () => {
     await page.keyboard.press('Enter');
     await page
       .getByRole('alert')
-      .getByText(/The level must be from -160 to 0 dBFS/)
+      .getByText(/The level must be from −160 to 0 dBFS/)
       .first()
       .waitFor();
     await page.keyboard.press('Escape');

@@ -57,6 +57,7 @@ export {
   type StimulusKind,
 } from './stimulus/stimulus-kinds.js';
 export * from './stimulus/standard-descriptor.js';
+export { LEAD_IN_LEVEL_DBFS } from './stimulus/stimulus-layout.js';
 export {
   HIGHEST_STIMULUS_RATE_HZ,
   LOWEST_STIMULUS_RATE_HZ,

@@ -7,6 +7,8 @@ import { currentCsrfToken } from './csrf';
 export interface UploadRequest {
   readonly file: File;
   readonly filing: { readonly unitId?: string; readonly conditionId?: string; readonly rigId?: string };
+  /** How a take of the Live page was made, as JSON. */
+  readonly take?: string;
   /** The same key for the same file: an upload that is tried again after a lost answer is not stored twice. */
   readonly idempotencyKey: string;
 }
@@ -62,11 +64,12 @@ function answer(
 }
 
 /** The file comes last, so that the server knows where it belongs before its bytes arrive. */
-function toFormData({ file, filing }: UploadRequest): FormData {
+function toFormData({ file, filing, take }: UploadRequest): FormData {
   const form = new FormData();
   for (const [name, value] of Object.entries(filing)) {
     if (value) form.set(name, value);
   }
+  if (take !== undefined) form.set('take', take);
   form.set('file', file, file.name);
   return form;
 }

@@ -29,7 +29,8 @@ export function PlayingAdvice({ isExact }: { isExact: boolean }) {
         <dt>From a computer</dt>
         <dd>
           Set the output to the file’s own rate and every volume on the way to full; give the player the
-          output for itself where it can have it.
+          output for itself where it can have it. A browser resamples to the system’s rate and may dither:
+          good for a first listen, not for a record.
         </dd>
         <dt>At the recorder</dt>
         <dd>

@@ -3,6 +3,7 @@ import { useSearchParams } from 'react-router-dom';
 import { Columns, Page } from '@/components/page/page';
 import { PageHead } from '@/components/page/page-head';
 import { FailedState, LoadingState } from '@/components/states/states';
+import { MINUS } from '@/lib/format/number';
 import { useStimulusFile } from '../hooks/use-stimulus-file';
 import { useStimulusWorker } from '../hooks/use-stimulus-worker';
 import { findEntry } from '../model/stimulus-catalogue';
@@ -83,7 +84,7 @@ export function StimuliPage() {
         {preview.data && (
           <>
             <StimulusPreviewCharts preview={preview.data} title={entry.title} />
-            <StimulusContents preview={preview.data} />
+            <StimulusContents preview={preview.data} ceilingDbfs={form.options.ceilingDbfs ?? 0} />
           </>
         )}
       </Columns>
@@ -93,6 +94,6 @@ export function StimuliPage() {
 
 /** A refusal as a sentence of its own. */
 function sentenceOf(why: string): string {
-  const text = why.charAt(0).toUpperCase() + why.slice(1);
+  const text = why.charAt(0).toUpperCase() + why.slice(1).replace(/(?<![\w-])-(?=\d)/g, MINUS);
   return text.endsWith('.') ? text : `${text}.`;
 }

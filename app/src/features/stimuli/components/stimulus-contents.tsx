@@ -1,12 +1,21 @@
+import { LEAD_IN_LEVEL_DBFS } from '@benchlark/dsp';
 import { Section } from '@/components/page/page';
-import { formatDuration, formatLevel } from '@/lib/format/quantity';
+import { formatNumber } from '@/lib/format/number';
+import { formatDuration, formatLevel, withUnit } from '@/lib/format/quantity';
 import { measureWords } from '../model/measure-words';
 import type { StimulusPreview } from '../worker/preview';
 
 const CHANNEL_WORDS = { both: 'both', left: 'left alone', right: 'right alone' } as const;
 
 /** The parts of a file in the order played, and what each yields. */
-export function StimulusContents({ preview }: { preview: StimulusPreview }) {
+export function StimulusContents({
+  preview,
+  ceilingDbfs,
+}: {
+  preview: StimulusPreview;
+  /** No sound of the file goes above it, the lead-in included. */
+  ceilingDbfs: number;
+}) {
   const { parts, marks } = preview.descriptor;
   return (
     <Section
@@ -14,7 +23,7 @@ export function StimulusContents({ preview }: { preview: StimulusPreview }) {
       sub={
         marks.length === 0
           ? 'no lead-in and no marks'
-          : 'after a lead-in of 2 s at −40 dBFS and a pair of marks'
+          : `after a lead-in of 2 s at ${formatLevel(Math.min(LEAD_IN_LEVEL_DBFS, ceilingDbfs))} and a pair of marks`
       }
     >
       <div className="bl-stimulus-table" role="region" aria-label="Parts of the file" tabIndex={0}>
@@ -41,11 +50,53 @@ export function StimulusContents({ preview }: { preview: StimulusPreview }) {
           </tbody>
         </table>
       </div>
+      {parts
+        .filter(({ steps }) => steps.length > 1)
+        .map((part) => (
+          <StepTimes key={part.fromS} part={part} />
+        ))}
     </Section>
   );
 }
 
-function levelWords({ steps, parameters }: StimulusPreview['descriptor']['parts'][number]): string {
+type Part = StimulusPreview['descriptor']['parts'][number];
+
+const secondsOf = (timeS: number): string => withUnit(formatNumber(timeS, { decimals: 2 }), 's');
+
+/** When each step begins, for whoever watches a recorder or cuts a recording by hand. */
+function StepTimes({ part }: { part: Part }) {
+  return (
+    <details className="bl-stimuli-fold">
+      <summary>
+        The {part.steps.length} steps from {formatDuration(part.fromS)} on, with their times
+      </summary>
+      <div className="bl-stimulus-table" role="region" aria-label="Steps and their times" tabIndex={0}>
+        <table className="bl-table">
+          <thead>
+            <tr>
+              <th scope="col">step</th>
+              <th scope="col">level</th>
+              <th scope="col">from</th>
+              <th scope="col">to</th>
+            </tr>
+          </thead>
+          <tbody>
+            {part.steps.map(({ levelDbfs, fromS, toS }, index) => (
+              <tr key={fromS}>
+                <td>{index + 1}</td>
+                <td>{formatLevel(levelDbfs)}</td>
+                <td>{secondsOf(fromS)}</td>
+                <td>{secondsOf(toS)}</td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </div>
+    </details>
+  );
+}
+
+function levelWords({ steps, parameters }: Part): string {
   const [first] = steps;
   const last = steps.at(-1);
   if (first && last && steps.length > 1) {

@@ -18,7 +18,10 @@ export function StimulusWhole({
   const [part] = descriptor.parts;
   const marked = part === undefined || descriptor.parts.length > 1 ? null : part;
   return (
-    <Section title="The whole file" sub={formatDuration(durationS)}>
+    <Section
+      title="The whole file"
+      sub={`${formatDuration(durationS)}, sketched from samples here and there`}
+    >
       <WaveformDrawing overview={overview} durationS={durationS} channels={CHANNELS} segment={marked} />
     </Section>
   );

@@ -64,7 +64,7 @@ describe('a stimulus in the address', () => {
       'programme-quick-44_1k-16bit.wav',
     );
     expect(fileNameOf(read('name=difference-pair&level=-6&low=18000&duration=2'))).toBe(
-      'difference-pair-96k-24bit-18000-20000hz--6db-2s.wav',
+      'difference-pair-96k-24bit-18000-20000hz-minus6db-2s.wav',
     );
     expect(fileNameOf(read('name=sweep&bits=32f&bare=yes'))).toBe('sweep-96k-float-bare.wav');
   });

@@ -98,7 +98,7 @@ export function refusedKey(message: string): NumberKey | 'rate' | 'dither' | 'ch
 /** Parts of a file's name that tell a signal from the usual one of its kind. */
 function ownWords({ name, options }: StimulusForm): string[] {
   const { defaults } = kindOf(name);
-  const number = (value: number): string => String(value).replace('.', '_');
+  const number = (value: number): string => String(value).replace('.', '_').replace('-', 'minus');
   const { lowFrequencyHz, highFrequencyHz, levelDbfs, ceilingDbfs, durationS, channels } = options;
   const isPair = lowFrequencyHz !== undefined || highFrequencyHz !== undefined;
   return [

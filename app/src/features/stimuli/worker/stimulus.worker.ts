@@ -1,7 +1,7 @@
 import { expose } from 'comlink';
 import type { StimulusOptions } from '@benchlark/dsp';
 import { previewStimulus } from './preview';
-import { renderStimulus, type SampleChunk } from './render-samples';
+import { renderStimulus, type SampleChunk } from '@/lib/render-samples';
 import { writeStimulus } from './write';
 
 let isCancelled = false;

@@ -3,7 +3,7 @@ import { createHash } from 'node:crypto';
 import { createStimulus, encodeWavBlocks } from '@benchlark/dsp';
 import { describe, expect, it } from 'vitest';
 import { previewStimulus } from './preview';
-import { renderStimulus } from './render-samples';
+import { renderStimulus } from '@/lib/render-samples';
 import { writeStimulus } from './write';
 
 const OPTIONS = { sampleRateHz: 48_000, bitsPerSample: 16 } as const;
