@@ -19,6 +19,7 @@ const archiveRoutes: RouteObject[] = [
   { path: 'records/:recordId', lazy: () => import('./routes/record-route') },
   { path: 'units', lazy: () => import('./routes/units-route') },
   { path: 'units/:unitId', lazy: () => import('./routes/unit-route') },
+  { path: 'live', lazy: () => import('./routes/live-route') },
   { path: 'stimuli', lazy: () => import('./routes/stimuli-route') },
 ];
 

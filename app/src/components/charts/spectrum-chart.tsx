@@ -22,6 +22,10 @@ export interface SpectrumChartProps {
   harmonics?: readonly SpectrumHarmonic[];
   /** Shown range; the whole of the data from 20 Hz up when left out. */
   bandHz?: readonly [number, number];
+  /** Shown range of levels, dBFS; found from the data when left out. */
+  levelsDbfs?: readonly [number, number];
+  /** Spectra of before. Keep the identity. */
+  references?: readonly SpectrumChannel[];
   notes?: readonly ChartNote[];
   source: ChartSource;
 }
@@ -29,10 +33,20 @@ export interface SpectrumChartProps {
 /** What comes out: level over frequency, the channels over the rig alone, harmonics marked. */
 export function SpectrumChart(props: SpectrumChartProps) {
   const { title = 'Spectrum', sub, heightPx = 372, state, source } = props;
-  const { channels, rigAlone, fundamentalHz, harmonics, bandHz, notes } = props;
+  const { channels, rigAlone, fundamentalHz, harmonics, bandHz, levelsDbfs, references, notes } = props;
   const model = useMemo(
-    () => spectrumModel({ channels, rigAlone, fundamentalHz, harmonics, bandHz, notes }),
-    [channels, rigAlone, fundamentalHz, harmonics, bandHz, notes],
+    () =>
+      spectrumModel({
+        channels,
+        rigAlone,
+        fundamentalHz,
+        harmonics,
+        bandHz,
+        levelsDbfs,
+        references,
+        notes,
+      }),
+    [channels, rigAlone, fundamentalHz, harmonics, bandHz, levelsDbfs, references, notes],
   );
   const inWords = useMemo(
     () => spectrumInWords({ channels, harmonics, model }),

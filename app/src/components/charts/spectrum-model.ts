@@ -25,6 +25,10 @@ export interface SpectrumParts {
   readonly fundamentalHz?: number | null;
   readonly harmonics?: readonly SpectrumHarmonic[];
   readonly bandHz?: readonly [number, number];
+  /** Shown range of levels, dBFS; found from the data when left out. */
+  readonly levelsDbfs?: readonly [number, number];
+  /** Spectra of before, thinner, each in its channel's slot. */
+  readonly references?: readonly SpectrumChannel[];
   readonly notes?: readonly ChartNote[];
 }
 
@@ -66,7 +70,16 @@ export function levelRange(channels: readonly Pick<SpectrumChannel, 'y'>[]): { m
 }
 
 export function spectrumModel(parts: SpectrumParts): ChartModel {
-  const { channels, rigAlone, fundamentalHz, harmonics = [], bandHz, notes } = parts;
+  const {
+    channels,
+    rigAlone,
+    fundamentalHz,
+    harmonics = [],
+    bandHz,
+    levelsDbfs,
+    references = [],
+    notes,
+  } = parts;
   const traces: TraceModel[] = channels.map(({ name, x, y }, index) => ({
     id: name,
     name,
@@ -75,6 +88,17 @@ export function spectrumModel(parts: SpectrumParts): ChartModel {
     x,
     y,
   }));
+  references.forEach(({ name, x, y }, index) =>
+    traces.push({
+      id: `reference ${name}`,
+      name,
+      kind: 'spectrum',
+      slot: slotOf(index + 2),
+      x,
+      y,
+      isSecond: true,
+    }),
+  );
   if (rigAlone)
     traces.push({ id: 'rig-alone', name: 'rig alone', kind: 'floor', slot: 5, x: rigAlone.x, y: rigAlone.y });
   const highestHz = channels.reduce((top, { x }) => Math.max(top, x[x.length - 1] ?? 0), 0);
@@ -85,7 +109,9 @@ export function spectrumModel(parts: SpectrumParts): ChartModel {
       quantity: 'Level',
       unit: 'dBFS',
       scale: 'linear',
-      ...levelRange([...channels, ...(rigAlone ? [rigAlone] : [])]),
+      ...(levelsDbfs
+        ? { min: levelsDbfs[0], max: levelsDbfs[1] }
+        : levelRange([...channels, ...(rigAlone ? [rigAlone] : [])])),
     },
     traces,
     harmonics: harmonicMarks(channels, fundamentalHz ?? null, harmonics),

@@ -16,6 +16,14 @@ const CHART_KEYS: readonly (readonly [readonly string[], string])[] = [
   [['0'], 'all of the chart again'],
 ];
 
+const LIVE_KEYS: readonly (readonly [readonly string[], string])[] = [
+  [['Space'], 'play, or start the take'],
+  [['Esc'], 'stop every sound'],
+  [['H'], 'hold the picture, and go on'],
+  [['K'], 'keep the take'],
+  [['M'], 'make a note'],
+];
+
 function KeyRows({ rows }: { rows: readonly (readonly [readonly string[], string])[] }) {
   return (
     <dl className="bl-keys">
@@ -50,6 +58,8 @@ export function KeysDialog({
         <Dialog.Title size="4">Keys</Dialog.Title>
         <h2 className="bl-keys-head">On every page</h2>
         <KeyRows rows={[...PAGE_KEYS, ...goKeys]} />
+        <h2 className="bl-keys-head">On the Live page</h2>
+        <KeyRows rows={LIVE_KEYS} />
         <h2 className="bl-keys-head">On a chart that has the focus</h2>
         <KeyRows rows={CHART_KEYS} />
         <Flex mt="4" justify="end">

@@ -10,6 +10,7 @@ export interface Place {
 
 export const PLACES: readonly Place[] = [
   { to: '/', label: 'Today', goKey: 't' },
+  { to: '/live', label: 'Live', goKey: 'l', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/archive', label: 'Archive', goKey: 'a', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/units', label: 'Units', goKey: 'u', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/stimuli', label: 'Stimuli', goKey: 's', roles: ['technician', 'reviewer', 'administrator'] },

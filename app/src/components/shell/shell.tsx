@@ -27,7 +27,7 @@ export function Shell({ person, notes = {}, onSignOut, onAddRecordings, children
   const navigate = useNavigate();
   const { pathname } = useLocation();
   const isPhone = useMedia(PHONE_QUERY);
-  const [isFolded, setIsFolded] = useFolded();
+  const [isFolded, setIsFolded] = useFolded(pathname === '/live');
   const [areKeysOpen, setAreKeysOpen] = useState(false);
   const findRef = useRef<HTMLInputElement>(null);
   const mainRef = useFocusOnNewPage(pathname);
@@ -82,11 +82,15 @@ export function Shell({ person, notes = {}, onSignOut, onAddRecordings, children
   );
 }
 
-function useFolded(): [boolean, (isFolded: boolean) => void] {
-  const [isFolded, setIsFolded] = useState(() => sessionStorage.getItem(FOLD_KEY) === '1');
+/** The Live page needs the room: there the rail is folded until it is unfolded, and elsewhere it stays as it was. */
+function useFolded(isRoomy: boolean): [boolean, (isFolded: boolean) => void] {
+  const key = isRoomy ? `${FOLD_KEY}.live` : FOLD_KEY;
+  const read = () => (sessionStorage.getItem(key) ?? (isRoomy ? '1' : '0')) === '1';
+  const [held, setHeld] = useState(() => ({ key, isFolded: read() }));
+  const isFolded = held.key === key ? held.isFolded : read();
   const remember = (next: boolean) => {
-    sessionStorage.setItem(FOLD_KEY, next ? '1' : '0');
-    setIsFolded(next);
+    sessionStorage.setItem(key, next ? '1' : '0');
+    setHeld({ key, isFolded: next });
   };
   return [isFolded, remember];
 }

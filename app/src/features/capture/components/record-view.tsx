@@ -5,13 +5,8 @@ import type { ServedBody, ServedRecordDetail } from '../api/record-queries';
 import { partSearch } from '../model/part-address';
 import { FailedState } from '@/components/states/states';
 import { Link } from 'react-router-dom';
-import { ComponentsTable } from './components-table';
-import { BetweenSection, FiguresSection } from './figures-section';
-import { HarmonicsTable } from './harmonics-table';
-import type { BodyView } from './measures/body-view';
-import { MeasureView } from './measures/measure-view';
+import { MeasuredBody } from './measured-body';
 import { PartHead } from './parts/part-head';
-import { PartsTable } from './parts/parts-table';
 import { Waveform } from './waveform';
 
 interface RecordViewProps {
@@ -31,23 +26,14 @@ export function RecordView({ capture, detail, part }: RecordViewProps) {
       <>
         <PartHead parts={record.segments} number={part} />
         <MeasuredBody key={part} view={{ capture, detail, body, segment: part }} />
+        <BodyWaveform capture={capture} body={body} />
       </>
     );
   }
-  return <MeasuredBody view={{ capture, detail, body: record, segment: null }} />;
-}
-
-function MeasuredBody({ view }: { view: BodyView }) {
-  const { capture, body } = view;
   return (
     <>
-      {body.segments.length > 0 && <PartsTable parts={body.segments} />}
-      <MeasureView view={view} />
-      <FiguresSection record={body} />
-      <BetweenSection record={body} />
-      <HarmonicsTable record={body} />
-      <ComponentsTable record={body} />
-      <BodyWaveform capture={capture} body={body} />
+      <MeasuredBody view={{ capture, detail, body: record, segment: null }} />
+      <BodyWaveform capture={capture} body={record} />
     </>
   );
 }

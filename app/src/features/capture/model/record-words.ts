@@ -10,7 +10,10 @@ const RECOGNISED_WORDS: Readonly<Record<string, string>> = {
 };
 
 /** One line under an exported chart: what, of which unit, in which state, how. */
-export function conditionsLine(capture: Capture, body: ServedBody): string {
+export function conditionsLine(
+  capture: Pick<Capture, 'fileName' | 'unit' | 'condition' | 'rig'>,
+  body: ServedBody,
+): string {
   const { settings } = body;
   const parts = [
     capture.unit ? unitName(capture.unit) : capture.fileName,

@@ -3,7 +3,7 @@ import { ResidualChart } from '@/components/charts/residual-chart';
 import { channelName } from '@/lib/capture-words';
 import { useTraces } from '../../hooks/use-traces';
 import { tracesNamed } from '../../model/read-trace';
-import { residualScale } from '../../model/residual-scale';
+import { residualScale } from '@/components/charts/residual-scale';
 import type { BodyView } from './body-view';
 import { chartStateOf } from './chart-state-of';
 import { useChartSource } from './use-chart-source';

@@ -11,7 +11,11 @@ export function useChartSource({ capture, detail, body, segment }: BodyView, wha
       recordId: id,
       date: createdAt,
       conditions: conditionsLine(capture, body),
-      fileStem: ['capture', capture.number, segment === null ? null : `part-${segment}`, what]
+      fileStem: [
+        capture.number === null ? 'take' : `capture-${capture.number}`,
+        segment === null ? null : `part-${segment}`,
+        what,
+      ]
         .filter((part) => part !== null)
         .join('-'),
     }),
