@@ -9,6 +9,7 @@ import { openBrowser, openPage } from './support/browser';
 import { runCli } from './support/cli';
 import { makePublicRecordings, type PublicRecordings } from './support/public-recordings';
 import { startProduct } from './support/service';
+import { setUpBench } from './support/set-up-bench';
 
 interface ListedCapture {
   readonly id: string;
@@ -47,16 +48,7 @@ describe('from an empty bench to a trusted record', () => {
     (await getJson<{ items: ListedCapture[] }>('/api/captures?sort=number&order=asc')).items;
 
   it('makes the first administrator with the secret printed at the start', async () => {
-    const secret = /secret[^\n]*?[:\s]([A-Za-z0-9_-]{16,})/i.exec(service.log)?.[1];
-    expect(secret, service.log).toBeDefined();
-    await page.goto(service.url);
-    await page.getByLabel('One-time secret').fill(secret!);
-    await page.getByLabel('Name of the bench').fill('Quarry Lane');
-    await page.getByLabel('Your name').fill('Oda Lindqvist');
-    await page.getByLabel('Your e-mail').fill('oda@quarry-lane.example');
-    await page.getByLabel('Password', { exact: true }).fill('a long walk by the weir');
-    await page.getByRole('button', { name: /set up|begin|make/i }).click();
-    await page.waitForURL((address) => !address.pathname.includes('set-up'));
+    await setUpBench(page, service);
     const answer = await page.request.post(`${service.url}/api/setup`, { data: {} });
     expect([403, 404]).toContain(answer.status());
   });

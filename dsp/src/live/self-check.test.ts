@@ -10,7 +10,7 @@ const delay: PracticeStage = { kind: 'delay', channel: 'both', samples: 2640 };
 /** As a rig has it: so many frames later, into a longer recording, in noise. */
 function check(stages: readonly PracticeStage[], isSwapped = false) {
   const sent = renderSelfCheck(RATE_HZ).map((samples) => {
-    const longer = new Float64Array(1.6 * RATE_HZ);
+    const longer = new Float64Array(3 * RATE_HZ);
     longer.set(samples);
     return longer;
   });
@@ -32,6 +32,12 @@ describe('a rig’s check of itself', () => {
     expect(result.right.gainDb).toBeCloseTo(0, 1);
   });
 
+  it('finds what comes back late: 0.8 s through a slow system', () => {
+    const { left, right } = check([{ kind: 'delay', channel: 'both', samples: 0.745 * RATE_HZ }]);
+    expect(left).toMatchObject({ input: 'left', latencyS: 0.8 });
+    expect(right).toMatchObject({ input: 'right', latencyS: 0.8 });
+  });
+
   it('tells exchanged and joined channels', () => {
     const swapped = check([], true);
     expect([swapped.left.input, swapped.right.input]).toEqual(['right', 'left']);
@@ -40,10 +46,10 @@ describe('a rig’s check of itself', () => {
   });
 
   it('finds nothing where nothing comes back', () => {
-    const noise = [whiteNoise(1.6 * RATE_HZ, 0.01, 1), whiteNoise(1.6 * RATE_HZ, 0.01, 2)];
+    const noise = [whiteNoise(3 * RATE_HZ, 0.01, 1), whiteNoise(3 * RATE_HZ, 0.01, 2)];
     const nothing = { input: null, gainDb: null, polarity: null, latencyS: null };
     expect(readSelfCheck(noise, RATE_HZ)).toEqual({ left: nothing, right: nothing });
-    const silence = [new Float64Array(RATE_HZ), new Float64Array(RATE_HZ)];
+    const silence = [new Float64Array(3 * RATE_HZ), new Float64Array(3 * RATE_HZ)];
     expect(readSelfCheck(silence, RATE_HZ)).toEqual({ left: nothing, right: nothing });
     expect(check([{ kind: 'gain', channel: 'right', gainDb: -120 }]).right).toEqual(nothing);
   });

@@ -5,8 +5,8 @@ import { markAt, MARK_DURATION_S } from '../stimulus/mark-chirp.js';
 
 /** Where each output's chirp begins, seconds. */
 export const SELF_CHECK_LEFT_S = 0.2;
-export const SELF_CHECK_RIGHT_S = 0.6;
-export const SELF_CHECK_DURATION_S = 1;
+export const SELF_CHECK_RIGHT_S = 1.2;
+export const SELF_CHECK_DURATION_S = 2;
 export const SELF_CHECK_LEVEL_DBFS = -20;
 
 /** What came back of one output's chirp. */

@@ -1,7 +1,7 @@
 import type { PracticeDevice } from '@benchlark/dsp';
 import captureUrl from './capture.worklet.ts?worker&url';
 import generatorUrl from './generator.worklet.ts?worker&url';
-import { openInterface } from './open-interface';
+import { openInterface, watchDevices } from './open-interface';
 import practiceUrl from './practice.worklet.ts?worker&url';
 import type { ToneRequest } from './tone-source';
 import { readerOf } from './track-reader';
@@ -42,6 +42,8 @@ export type InputFeed =
 export interface RigEvents {
   /** The input is gone: unplugged, or its permission was taken back. */
   readonly onInputEnded: () => void;
+  /** The output that was chosen is gone; the system may play elsewhere. */
+  readonly onOutputEnded: () => void;
   readonly onInputMuted: (isMuted: boolean) => void;
 }
 
@@ -65,6 +67,7 @@ export class AudioRig {
   readonly #practice: AudioWorkletNode | null;
   readonly #track: MediaStreamTrack;
   readonly #feed: InputFeed;
+  readonly #stopWatching: () => void;
 
   private constructor(parts: {
     delivered: Delivered;
@@ -74,6 +77,7 @@ export class AudioRig {
     practice: AudioWorkletNode | null;
     track: MediaStreamTrack;
     feed: InputFeed;
+    stopWatching: () => void;
   }) {
     this.delivered = parts.delivered;
     this.#context = parts.context;
@@ -82,6 +86,7 @@ export class AudioRig {
     this.#practice = parts.practice;
     this.#track = parts.track;
     this.#feed = parts.feed;
+    this.#stopWatching = parts.stopWatching;
   }
 
   /**
@@ -111,6 +116,13 @@ export class AudioRig {
       const track = ends.input?.track ?? practiceTrack(context, bus, practice);
       if (ends.input) bus.connect(context.destination);
       track.addEventListener('ended', events.onInputEnded);
+      const stopWatching =
+        choice.kind === 'practice'
+          ? () => undefined
+          : watchDevices(
+              { inputId: track.getSettings().deviceId ?? choice.inputId, outputId: choice.outputId },
+              (which) => (which === 'input' ? events.onInputEnded() : events.onOutputEnded()),
+            );
       track.addEventListener('mute', () => events.onInputMuted(true));
       track.addEventListener('unmute', () => events.onInputMuted(false));
       const feed = feedOf(context, track);
@@ -125,7 +137,7 @@ export class AudioRig {
         isOutputChosen: ends.input?.isOutputChosen ?? true,
         path: feed.kind === 'track' ? 'track' : 'worklet',
       };
-      return new AudioRig({ delivered, context, bus, generator, practice, track, feed });
+      return new AudioRig({ delivered, context, bus, generator, practice, track, feed, stopWatching });
     } catch (reason) {
       ends.input?.track.stop();
       await context.close();
@@ -184,6 +196,7 @@ export class AudioRig {
   }
 
   async close(): Promise<void> {
+    this.#stopWatching();
     this.setTone(null);
     this.#track.stop();
     if (this.#context.state !== 'closed') await this.#context.close();

@@ -91,6 +91,30 @@ export async function openInterface(
   }
 }
 
+/**
+ * Watches that an input and an output stay plugged in. A system may move a stream to another device without a word to
+ * the track or the context, so that something else would be measured.
+ *
+ * @param ids - as the browser gives them; empty ones are the system's choice, which isn't watched
+ * @returns ends the watch
+ */
+export function watchDevices(
+  { inputId, outputId }: { inputId: string; outputId: string },
+  onGone: (which: 'input' | 'output') => void,
+): () => void {
+  const media = mediaDevices();
+  const look = async () => {
+    const { inputs, outputs } = await listDevices();
+    const isGone = (id: string, among: readonly MediaDeviceInfo[]) =>
+      id !== '' && among.every(({ deviceId }) => deviceId !== id);
+    if (isGone(inputId, inputs)) onGone('input');
+    else if (isGone(outputId, outputs)) onGone('output');
+  };
+  const onChange = () => void look();
+  media.addEventListener('devicechange', onChange);
+  return () => media.removeEventListener('devicechange', onChange);
+}
+
 /** Some browsers don't say the track's rate, and some refuse another than their own. */
 function contextAt(trackRateHz: number | null, askedRateHz: number): AudioContext {
   try {

@@ -8,6 +8,7 @@ import { PageHead } from '@/components/page/page-head';
 import { Sentence } from '@/components/sentence/slot';
 import { unitName } from '@/lib/capture-words';
 import { useFilingChoices } from '@/lib/use-filing-choices';
+import type { Delivered } from '../audio/audio-rig';
 import { LiveBenchProvider, useLive, useLiveBench } from '../hooks/live-bench-context';
 import { useArchiveTakes } from '../hooks/use-archive-takes';
 import { useFiling } from '../hooks/use-filing';
@@ -68,7 +69,9 @@ function LiveDesk({ renderTake }: LivePageProps) {
   const [openId, setOpenId] = useState<string | null>(null);
   /** What waits for the caution to be confirmed. */
   const [pending, setPending] = useState<(() => void) | null>(null);
-  const [isConfirmed, setIsConfirmed] = useState(false);
+  /** The opened rig for which it was; another one asks again. */
+  const [confirmedFor, setConfirmedFor] = useState<Delivered | null>(null);
+  const delivered = useLive((state) => state.delivered);
   const noteRef = useRef<HTMLInputElement>(null);
   const limitDbfs = NO_LIMIT_DBFS;
   const isOpen = rig === 'open';
@@ -79,7 +82,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
 
   /** Sound leaves the computer only once the caution has been confirmed since the rig was opened. */
   const withCare = (act: () => void) => {
-    if (isPractice || isConfirmed) act();
+    if (isPractice || confirmedFor === delivered) act();
     else setPending(() => act);
   };
   const start = () => {
@@ -227,7 +230,6 @@ function LiveDesk({ renderTake }: LivePageProps) {
             pick={setup.pick}
             faults={setup.faults}
             onPick={(pick) => {
-              setIsConfirmed(false);
               setSetup({ ...setup, pick });
             }}
             onFaults={(faults) => setSetup({ ...setup, faults })}
@@ -240,7 +242,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
         limitDbfs={limitDbfs}
         onOpenChange={(next) => !next && setPending(null)}
         onConfirm={() => {
-          setIsConfirmed(true);
+          setConfirmedFor(delivered);
           pending?.();
         }}
       />

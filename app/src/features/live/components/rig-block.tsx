@@ -90,7 +90,7 @@ function CheckWords({ check }: { check: SelfCheckResult }) {
         return (
           <li key={side}>
             Output {side} came back {where}, {formatLevel(gainDb, 'dB')} against what was sent,{' '}
-            {polarity === 'inverted' ? 'inverted' : 'upright'},{' '}
+            {polarity === 'inverted' ? 'inverted' : 'upright'}, about{' '}
             {withUnit(formatNumber((latencyS ?? 0) * 1000, { decimals: 0 }), 'ms')} later.
           </li>
         );

@@ -16,9 +16,9 @@ function isTyping(target: EventTarget | null): boolean {
   );
 }
 
-/** A focused button has the space bar for itself. */
+/** A focused button has the space bar for itself; a word of the sentence opens by Enter too, and leaves it to Play. */
 function isOnButton(target: EventTarget | null): boolean {
-  return target instanceof HTMLElement && target.closest('button, a, summary, label') !== null;
+  return target instanceof HTMLElement && target.closest('button:not(.bl-slot), a, summary, label') !== null;
 }
 
 /** For a hand on a screwdriver: Space plays, Esc stops from anywhere, H holds, K keeps, M makes a note. */
@@ -40,6 +40,7 @@ export function useLiveKeys(keys: LiveKeys): void {
       else if (key === 'm') latest.current.onNote();
       else return;
       event.preventDefault();
+      event.stopPropagation();
     };
     // Before dialogs see it: they keep Esc for themselves.
     document.addEventListener('keydown', onKeyDown, { capture: true });

@@ -83,6 +83,8 @@ export class LiveBench {
       const rig = await this.#parts.openRig(choice, {
         onInputEnded: () =>
           void this.#lose('The input is gone: it was unplugged, or its permission taken back.'),
+        onOutputEnded: () =>
+          void this.#lose('The output is gone: it was unplugged, and the system may play elsewhere.'),
         onInputMuted: (isMuted) => this.#set({ isMuted }),
       });
       this.#rig = rig;
