@@ -19,6 +19,8 @@ const archiveRoutes: RouteObject[] = [
   { path: 'records/:recordId', lazy: () => import('./routes/record-route') },
   { path: 'units', lazy: () => import('./routes/units-route') },
   { path: 'units/:unitId', lazy: () => import('./routes/unit-route') },
+  { path: 'rigs', lazy: () => import('./routes/rigs-route') },
+  { path: 'rigs/:rigId', lazy: () => import('./routes/rig-route') },
   { path: 'stimuli', lazy: () => import('./routes/stimuli-route') },
 ];
 
