@@ -18,10 +18,10 @@ export function CalibrationTable({ calibrations, onRetire }: CalibrationTablePro
         <thead>
           <tr>
             <th scope="col">range</th>
+            <th scope="col">state</th>
             <th scope="col">full scale</th>
             <th scope="col">holds for</th>
             <th scope="col">taken</th>
-            <th scope="col">state</th>
             {onRetire && (
               <th scope="col">
                 <span className="bl-hidden">retire</span>
@@ -56,8 +56,12 @@ function CalibrationRow({
           {DIRECTION_WORDS[calibration.direction]}, {CHANNEL_WORDS[calibration.channel]}
         </span>
       </th>
+      <td className={isStale(calibration) ? 'bl-rig-stale' : undefined}>{stateWords(calibration)}</td>
       <td>
-        <span className="bl-mono">{formatVolts(calibration.fullScaleVrms)}</span> RMS ±{percent}
+        <span className="bl-calibrations-value">
+          <span className="bl-mono">{formatVolts(calibration.fullScaleVrms)}</span> RMS
+        </span>
+        <span className="bl-table-second">±{percent}</span>
         <span className="bl-table-second">{dividerWords(calibration)}</span>
       </td>
       <td>
@@ -71,10 +75,9 @@ function CalibrationRow({
         {formatDay(calibration.takenOn)}
         <span className="bl-table-second">
           {calibration.meter}, {calibration.createdBy.displayName}
-          {notes !== '' && `. ${notes}`}
         </span>
+        {notes !== '' && <span className="bl-table-second">{notes}</span>}
       </td>
-      <td className={isStale(calibration) ? 'bl-rig-stale' : undefined}>{stateWords(calibration)}</td>
       {onRetire && (
         <td>
           {calibration.state !== 'retired' && (
