@@ -1,6 +1,7 @@
 import { Button } from '@radix-ui/themes';
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
+import { Link } from 'react-router-dom';
 import { NewestCaptures } from '@/components/captures/newest-captures';
 import { Columns, Facts, MarginBlock, Page, Section } from '@/components/page/page';
 import { PageHead } from '@/components/page/page-head';
@@ -116,7 +117,12 @@ function RigMargin({ rig }: { rig: Rig }) {
               detail: rig.limitDbfs === null ? 'full scale: no limit of its own' : formatLevel(rig.limitDbfs),
             },
             { term: 'on the books', detail: `since ${formatDate(rig.createdAt)}` },
-            { term: 'captures', detail: formatCount(rig.captureCount) },
+            {
+              term: 'captures',
+              detail: (
+                <Link to={`/archive?rig=${rig.id}`}>{formatCount(rig.captureCount)} in the archive</Link>
+              ),
+            },
           ]}
         />
       </MarginBlock>
