@@ -13,6 +13,7 @@ export * from './source/slice-source.js';
 export * from './source/select-channels.js';
 export * from './record/compare-records.js';
 export * from './record/dsp-version.js';
+export * from './record/embed-baseline.js';
 export * from './record/figure-unit.js';
 export * from './record/parse-calibration.js';
 export * from './record/parse-record.js';

@@ -122,7 +122,7 @@ describe('records', () => {
     const asked = await bench.post(`/api/captures/${capture.id}/records`).send(settings).expect(202);
     expect(asked.body.isNew).toBe(true);
     const again = await bench.post(`/api/captures/${capture.id}/records`).send(settings).expect(202);
-    expect(again.body).toEqual({ jobId: asked.body.jobId, isNew: false });
+    expect(again.body).toEqual({ jobId: asked.body.jobId, isNew: false, notes: [] });
     const { record } = await settled(capture.id);
     expect(record).toMatchObject({ ordinal: 2, supersedesId: capture.record!.id });
     const newer = await recordOf(record!.id);

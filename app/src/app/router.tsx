@@ -20,6 +20,8 @@ const archiveRoutes: RouteObject[] = [
   { path: 'units', lazy: () => import('./routes/units-route') },
   { path: 'units/:unitId', lazy: () => import('./routes/unit-route') },
   { path: 'live', lazy: () => import('./routes/live-route') },
+  { path: 'rigs', lazy: () => import('./routes/rigs-route') },
+  { path: 'rigs/:rigId', lazy: () => import('./routes/rig-route') },
   { path: 'stimuli', lazy: () => import('./routes/stimuli-route') },
 ];
 

@@ -420,6 +420,102 @@ export interface paths {
     patch?: never;
     trace?: never;
   };
+  '/api/rigs/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['getRig'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['updateRig'];
+    trace?: never;
+  };
+  '/api/rigs/{id}/live-settings': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['getLiveSettings'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/rigs/{id}/calibrations': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['listCalibrations'];
+    put?: never;
+    post: operations['createCalibration'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/rigs/{id}/calibrations/{calibrationId}/retire': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get?: never;
+    put?: never;
+    post: operations['retireCalibration'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/rigs/{id}/baselines': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['listBaselines'];
+    put?: never;
+    post: operations['createBaseline'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/rigs/{id}/baselines/{baselineId}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get?: never;
+    put?: never;
+    post?: never;
+    delete: operations['retireBaseline'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
   '/api/jobs': {
     parameters: {
       query?: never;
@@ -945,20 +1041,231 @@ export interface components {
       /** Format: date */
       startedOn?: string | null;
     };
+    /**
+     * @description Of the input calibrations that are not retired
+     * @enum {string}
+     */
+    RigCalibrationState: 'none' | 'valid' | 'expired';
     RigDto: {
       /** Format: uuid */
       id: string;
       name: string;
+      interface: string;
+      source: string;
+      cables: string;
+      supply: string;
+      load: string;
+      /** @description The highest level that may be played on it, dBFS; null: no limit of its own */
+      limitDbfs: number | null;
       notes: string;
       /** Format: date-time */
       createdAt: string;
+      captureCount: number;
+      /** @description Of the input calibrations that are not retired */
+      calibrationState: components['schemas']['RigCalibrationState'];
+      /**
+       * Format: date
+       * @description The last day on which an input calibration holds
+       */
+      calibratedUntil: string | null;
     };
     RigListDto: {
       items: components['schemas']['RigDto'][];
     };
     CreateRigDto: {
-      name: string;
+      interface?: string;
+      source?: string;
+      cables?: string;
+      supply?: string;
+      load?: string;
+      /** @description dBFS; null: no limit of its own */
+      limitDbfs?: number | null;
       notes?: string;
+      name: string;
+    };
+    UpdateRigDto: {
+      interface?: string;
+      source?: string;
+      cables?: string;
+      supply?: string;
+      load?: string;
+      /** @description dBFS; null: no limit of its own */
+      limitDbfs?: number | null;
+      notes?: string;
+      name?: string;
+    };
+    /** @enum {string} */
+    CalibrationChannel: 'left' | 'right' | 'all';
+    CalibratedChannelDto: {
+      /** @example left */
+      channel: string;
+      fullScaleVrms: number;
+      /** @description k = 2 */
+      expandedPercent: number;
+    };
+    EmbeddedCalibrationDto: {
+      /** @enum {string} */
+      schema: 'benchlark-calibration/1';
+      /** Format: date */
+      date: string;
+      sampleRateHz: number;
+      inputRange: string;
+      channels: components['schemas']['CalibratedChannelDto'][];
+    };
+    LiveCalibrationDto: {
+      /**
+       * Format: uuid
+       * @description To be sent as calibrationId
+       */
+      id: string;
+      channel: components['schemas']['CalibrationChannel'];
+      range: string;
+      sampleRateHz: number;
+      loadOhm: number | null;
+      /** Format: date */
+      validUntil: string;
+      /** @description Goes into the settings as it is; of one channel, the other channel’s is joined to it */
+      calibration: components['schemas']['EmbeddedCalibrationDto'];
+    };
+    /** @enum {string} */
+    MeasureId:
+      | 'tone'
+      | 'idle'
+      | 'dynamic-range'
+      | 'two-tone'
+      | 'two-tone-steps'
+      | 'level-steps'
+      | 'sweep'
+      | 'multitone'
+      | 'separation'
+      | 'jitter'
+      | 'intersample'
+      | 'filter'
+      | 'loudness'
+      | 'programme';
+    LiveBaselineDto: {
+      /**
+       * Format: uuid
+       * @description To be sent as baselineId
+       */
+      id: string;
+      measure: components['schemas']['MeasureId'];
+      inputRange: string;
+      sampleRateHz: number;
+      /** Format: date-time */
+      createdAt: string;
+      /** @description The record without its traces: goes into the settings as it is */
+      baseline: {
+        [key: string]: unknown;
+      };
+    };
+    LiveSettingsDto: {
+      limitDbfs: number | null;
+      /** @description Of what is recorded */
+      inputs: components['schemas']['LiveCalibrationDto'][];
+      /** @description Of what is played */
+      outputs: components['schemas']['LiveCalibrationDto'][];
+      baselines: components['schemas']['LiveBaselineDto'][];
+    };
+    /** @enum {string} */
+    CalibrationDirection: 'input' | 'output';
+    NamedPersonDto: {
+      /** Format: uuid */
+      id: string;
+      displayName: string;
+    };
+    /** @enum {string} */
+    CalibrationState: 'valid' | 'expired' | 'retired';
+    CalibrationDto: {
+      /** Format: uuid */
+      id: string;
+      /** Format: uuid */
+      rigId: string;
+      channel: components['schemas']['CalibrationChannel'];
+      direction: components['schemas']['CalibrationDirection'];
+      range: string;
+      sampleRateHz: number;
+      frequencyHz: number;
+      voltsRmsAtFullScale: number;
+      dividerRatio: number;
+      /** @description At the unit, for a sine of 0 dBFS: the divider is counted in */
+      fullScaleVrms: number;
+      loadOhm: number | null;
+      meter: string;
+      meterUncertaintyPercent: number;
+      /** Format: date */
+      takenOn: string;
+      /** Format: date */
+      validUntil: string;
+      notes: string;
+      /** Format: date-time */
+      createdAt: string;
+      createdBy: components['schemas']['NamedPersonDto'];
+      state: components['schemas']['CalibrationState'];
+      /** @description A newer one was made for the same channel, direction, range and rate */
+      isFollowed: boolean;
+      /** Format: date-time */
+      retiredAt: string | null;
+    };
+    CalibrationListDto: {
+      items: components['schemas']['CalibrationDto'][];
+    };
+    CreateCalibrationDto: {
+      channel: components['schemas']['CalibrationChannel'];
+      direction: components['schemas']['CalibrationDirection'];
+      range: string;
+      sampleRateHz: number;
+      /** @description Of the tone it was made with */
+      frequencyHz: number;
+      /** @description At the interface’s own terminals, for a sine of 0 dBFS */
+      voltsRmsAtFullScale: number;
+      /**
+       * @description Of a divider between unit and interface; 1: none
+       * @default 1
+       */
+      dividerRatio: number;
+      loadOhm?: number | null;
+      meter: string;
+      /** @description Expanded, k = 2: of the meter and the divider */
+      meterUncertaintyPercent: number;
+      /** Format: date */
+      takenOn: string;
+      /**
+       * Format: date
+       * @description The last day on which it holds
+       */
+      validUntil: string;
+      notes?: string;
+    };
+    BaselineDto: {
+      /** Format: uuid */
+      id: string;
+      /** Format: uuid */
+      captureId: string;
+      captureNumber: number;
+      /** Format: uuid */
+      recordId: string;
+      measure: components['schemas']['MeasureId'];
+      /** @description The capture was analysed again since; the baseline stays what it was */
+      hasNewerRecord: boolean;
+      inputRange: string;
+      sampleRateHz: number;
+      /** Format: date-time */
+      createdAt: string;
+      createdBy: components['schemas']['NamedPersonDto'];
+      /** Format: date-time */
+      retiredAt: string | null;
+    };
+    BaselineListDto: {
+      items: components['schemas']['BaselineDto'][];
+    };
+    CreateBaselineDto: {
+      /**
+       * Format: uuid
+       * @description Its newest record becomes the baseline
+       */
+      captureId: string;
+      inputRange: string;
     };
     /** @enum {string} */
     JobState: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
@@ -991,22 +1298,6 @@ export interface components {
     JobListDto: {
       items: components['schemas']['JobDto'][];
     };
-    /** @enum {string} */
-    MeasureId:
-      | 'tone'
-      | 'idle'
-      | 'dynamic-range'
-      | 'two-tone'
-      | 'two-tone-steps'
-      | 'level-steps'
-      | 'sweep'
-      | 'multitone'
-      | 'separation'
-      | 'jitter'
-      | 'intersample'
-      | 'filter'
-      | 'loudness'
-      | 'programme';
     /** @enum {string} */
     CaptureState: 'queued' | 'analysing' | 'done' | 'failed' | 'cancelled';
     /** @enum {string} */
@@ -1062,6 +1353,7 @@ export interface components {
       schema: 'benchlark-take/1';
       kind: string;
       measure: components['schemas']['MeasureId'];
+      /** @description Of the first analysis; calibrationId and baselineId name those of the rig */
       settings: {
         [key: string]: unknown;
       };
@@ -1210,12 +1502,24 @@ export interface components {
       bandLowHz?: number;
       bandHighHz?: number;
       highestHarmonic?: number;
+      /**
+       * Format: uuid
+       * @description An input calibration of the recording’s rig; the record embeds it in full
+       */
+      calibrationId?: string;
+      /**
+       * Format: uuid
+       * @description A baseline of the recording’s rig; the record embeds it in full
+       */
+      baselineId?: string;
     };
     RequestedRecordDto: {
       /** Format: uuid */
       jobId: string;
       /** @description False: the same analysis was asked for before */
       isNew: boolean;
+      /** @description What was accepted although it doesn’t fit the recording, in sentences */
+      notes: string[];
     };
     RecordDto: {
       /** Format: uuid */
@@ -2039,6 +2343,209 @@ export interface operations {
         };
         content: {
           'application/json': components['schemas']['RigDto'];
+        };
+      };
+    };
+  };
+  getRig: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RigDto'];
+        };
+      };
+    };
+  };
+  updateRig: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['UpdateRigDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['RigDto'];
+        };
+      };
+    };
+  };
+  getLiveSettings: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['LiveSettingsDto'];
+        };
+      };
+    };
+  };
+  listCalibrations: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CalibrationListDto'];
+        };
+      };
+    };
+  };
+  createCalibration: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateCalibrationDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CalibrationDto'];
+        };
+      };
+    };
+  };
+  retireCalibration: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        calibrationId: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['CalibrationDto'];
+        };
+      };
+    };
+  };
+  listBaselines: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['BaselineListDto'];
+        };
+      };
+    };
+  };
+  createBaseline: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['CreateBaselineDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['BaselineDto'];
+        };
+      };
+    };
+  };
+  retireBaseline: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        baselineId: string;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['BaselineDto'];
         };
       };
     };

@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { DspInputError } from '../errors.js';
 import { compareRecords } from '../record/compare-records.js';
+import { embedBaseline } from '../record/embed-baseline.js';
 import { parseRecord } from '../record/parse-record.js';
 import type { BenchRecord, Calibration } from '../record/record.js';
 import { toRecordJson } from '../record/to-record-json.js';
@@ -119,6 +120,20 @@ describe('what a figure is worth', () => {
     expect(warningCodes(record)).toContain('calibration-incomplete');
   });
 
+  it('gives no volts by a calibration of another rate, and says so', async () => {
+    const other = { ...calibration, sampleRateHz: RATE * 2 };
+    const record = await analyseSamples(tone, [noisyTone(2)], RATE, { calibration: other });
+    expect(record.channels[0].figures['fundamentalLevelV']).toBeUndefined();
+    expect(record.warnings.find(({ code }) => code === 'calibration-not-applicable')?.message).toContain(
+      String(RATE * 2),
+    );
+    expect(warningCodes(record)).not.toContain('calibration-incomplete');
+    expect(record.settings.calibration).toEqual(other);
+    const same = { ...calibration, sampleRateHz: RATE };
+    const held = await analyseSamples(tone, [noisyTone(2)], RATE, { calibration: same });
+    expect(numberOf(held.channels[0], 'fundamentalLevelV')).toBeCloseTo(2, 4);
+  });
+
   const baselineOf = (noise: number, harmonic: number): Promise<BenchRecord> =>
     analyseSamples(
       tone,
@@ -177,6 +192,18 @@ describe('what a figure is worth', () => {
       baseline,
     });
     expect(warningCodes(idle)).toContain('baseline-not-applicable');
+  });
+
+  it('doesn’t apply a baseline of another range, and says so', async () => {
+    const baseline = embedBaseline(await baselineOf(1e-4, 1e-3), 'low gain');
+    const against = (inputRange: string) =>
+      analyseSamples(tone, [noisyTone(2)], RATE, { baseline, calibration: { ...calibration, inputRange } });
+    const other = await against('high gain');
+    expect(other.warnings.find(({ code }) => code === 'baseline-not-applicable')?.message).toMatch(
+      /“low gain”.*“high gain”/,
+    );
+    expect(warningCodes(await against('low gain'))).not.toContain('baseline-not-applicable');
+    expect(other.settings.baseline?.settings.inputRange).toBe('low gain');
   });
 });
 

@@ -23,9 +23,15 @@ export function parseCalibration(json: unknown): Calibration {
   if (channels.length === 0) read.fail('channels', [], 'at least one channel');
   const names = channels.map(({ channel }) => channel);
   if (new Set(names).size !== names.length) read.fail('channels', names, 'each channel once');
+  const sampleRateHz =
+    top['sampleRateHz'] === undefined ? undefined : read.number(top['sampleRateHz'], 'sampleRateHz');
+  if (sampleRateHz !== undefined && sampleRateHz <= 0)
+    read.fail('sampleRateHz', sampleRateHz, 'a rate above 0');
   return {
     schema: read.oneOf(top['schema'], ['benchlark-calibration/1'], 'schema'),
     date: read.text(top['date'], 'date'),
+    ...(sampleRateHz === undefined ? {} : { sampleRateHz }),
+    ...(top['inputRange'] === undefined ? {} : { inputRange: read.text(top['inputRange'], 'inputRange') }),
     channels,
   };
 }

@@ -74,6 +74,7 @@ function checkSettings(read: JsonReader, value: unknown, path: string, depth: nu
   read.text(settings['window'], join(path, 'window'));
   if (settings['channel'] !== undefined)
     read.oneOf(settings['channel'], ['left', 'right', 'all'], join(path, 'channel'));
+  if (settings['inputRange'] !== undefined) read.text(settings['inputRange'], join(path, 'inputRange'));
   if (settings['descriptor'] !== undefined && settings['descriptor'] !== null) {
     read.object(settings['descriptor'], join(path, 'descriptor'));
   }

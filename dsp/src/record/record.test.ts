@@ -201,6 +201,10 @@ describe('parseRecord and parseCalibration', () => {
       channels: [{ channel: 'left', fullScaleVrms: 4.2, expandedPercent: 0.3 }],
     };
     expect(parseCalibration(JSON.parse(JSON.stringify(calibration)))).toEqual(calibration);
+    const held = { ...calibration, sampleRateHz: 96_000, inputRange: 'low gain' };
+    expect(parseCalibration(JSON.parse(JSON.stringify(held)))).toEqual(held);
+    expect(() => parseCalibration({ ...held, sampleRateHz: 0 })).toThrow('sampleRateHz');
+    expect(() => parseCalibration({ ...held, inputRange: 3 })).toThrow('inputRange');
   });
 });
 

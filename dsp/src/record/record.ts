@@ -100,6 +100,10 @@ export interface Finding {
 export interface Calibration {
   readonly schema: 'benchlark-calibration/1';
   readonly date: string;
+  /** The rate it holds for; at another one it is not applied. Left out: any. */
+  readonly sampleRateHz?: number;
+  /** The recorder's range or gain setting it holds for, in words. */
+  readonly inputRange?: string;
   readonly channels: readonly {
     readonly channel: string;
     /** V RMS of a sine that reads 0 dBFS. */
@@ -121,6 +125,8 @@ export interface RecordSettings {
   readonly highestHarmonic: number;
   /** Which channels were asked for; verifying a record asks for the same. */
   readonly channel?: 'left' | 'right' | 'all';
+  /** Of an embedded baseline: the recorder's range or gain setting it was taken in, in words. */
+  readonly inputRange?: string;
   /** The stimulus's descriptor in full, where one was given. */
   readonly descriptor?: StimulusDescriptor | null;
   readonly calibration: Calibration | null;

@@ -80,6 +80,8 @@ export const WARNING_SENTENCES = {
   'rig-limited': 'These figures lie within 3 dB of the rig’s own: they show the rig, not the unit.',
   'rig-influenced': 'The rig has a part in these figures: the bounds beside each say how much.',
   'baseline-not-applicable': 'The rig’s baseline was not applied: {reason}.',
+  'calibration-not-applicable':
+    'The channel {channel} has no figures in volts: the calibration holds at {calibrated} Hz, and this recording is one of {rate} Hz.',
   'calibration-incomplete':
     'The calibration says nothing of the channel {channel}: it has no figures in volts.',
   'stimulus-mismatch':

@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
 import { Injectable } from '@nestjs/common';
-import type { CaptureFacts } from '@benchlark/dsp';
+import type { AnalysisSettings, CaptureFacts } from '@benchlark/dsp';
 import { DataSource, type EntityManager } from 'typeorm';
 import { AuditService } from '../audit/audit.service';
 import type { Actor, SignedInPerson } from '../common/actor';
@@ -8,6 +8,7 @@ import { AppError } from '../common/app-error';
 import { isUniqueViolation } from '../database/database-errors';
 import { AnalysisRequests } from '../jobs/analysis-requests.service';
 import { PRIORITY } from '../jobs/job-queue';
+import { RigSettingsService } from '../rigs/rig-settings.service';
 import { ObjectStore } from '../storage/object-store';
 import { enterObject, lockObject } from '../storage/stored-objects';
 import { Capture, type FileWarning } from './capture.entity';
@@ -30,6 +31,14 @@ export interface Upload {
   readonly idempotencyKey: string | undefined;
 }
 
+interface CheckedUpload {
+  readonly facts: CaptureFacts;
+  readonly fileWarnings: FileWarning[];
+  readonly take: Take | null;
+  /** Of the first analysis. */
+  readonly settings: AnalysisSettings;
+}
+
 /** Takes recordings into the archive. */
 @Injectable()
 export class CapturesService {
@@ -38,6 +47,7 @@ export class CapturesService {
     private readonly store: ObjectStore,
     private readonly requests: AnalysisRequests,
     private readonly audit: AuditService,
+    private readonly rigSettings: RigSettingsService,
   ) {}
 
   /**
@@ -54,11 +64,12 @@ export class CapturesService {
     const { facts, fileWarnings } = await checkUpload(file.path, file.sha256);
     // Wrong fields are found before the file is stored, so that nothing is kept for them.
     const take = fields.take === undefined ? null : parseTake(fields.take);
-    await resolveFiling(this.dataSource.manager, filingOf(fields));
+    const { rigId } = await resolveFiling(this.dataSource.manager, filingOf(fields));
+    const settings = await this.firstSettings(take, rigId, facts);
     await this.store.keep(file.path, file.sha256);
     try {
       return await this.dataSource.transaction(async (tx) => {
-        const id = await this.enter(tx, upload, { facts, fileWarnings, take });
+        const id = await this.enter(tx, upload, { facts, fileWarnings, take, settings });
         if (idempotencyKey) {
           await tx.insert(UploadKey, {
             personId: person.id,
@@ -80,7 +91,7 @@ export class CapturesService {
   private async enter(
     tx: EntityManager,
     { file, fields, person, actor = null }: Upload,
-    { facts, fileWarnings, take }: { facts: CaptureFacts; fileWarnings: FileWarning[]; take: Take | null },
+    { facts, fileWarnings, take, settings }: CheckedUpload,
   ): Promise<string> {
     const { sha256, sizeBytes } = file;
     await lockObject(tx, sha256);
@@ -112,7 +123,7 @@ export class CapturesService {
     await this.requests.request(tx, {
       captureId,
       measure: take?.measure ?? null,
-      settings: take?.settings ?? {},
+      settings,
       requestedById: person.id,
       priority: PRIORITY.upload,
     });
@@ -123,6 +134,19 @@ export class CapturesService {
     };
     await this.audit.record(actor, fact, tx);
     return captureId;
+  }
+
+  /** What the first analysis is given: as the take says, with what it names of the rig in full. */
+  private async firstSettings(
+    take: Take | null,
+    rigId: string | null,
+    { sampleRateHz }: CaptureFacts,
+  ): Promise<AnalysisSettings> {
+    if (take === null) return {};
+    const { calibrationId, baselineId, ...settings } = take.settings;
+    const recording = { captureId: null, rigId, sampleRateHz, takenAt: new Date(take.startedAt) };
+    const ofRig = await this.rigSettings.resolve(recording, { calibrationId, baselineId });
+    return { ...settings, ...ofRig.settings };
   }
 
   private async findByKey(personId: string, key: string, fingerprint: string): Promise<string | null> {

@@ -12,14 +12,14 @@ interface FilingRow {
 }
 
 /**
- * Brings the search text and the unit's sort key of captures up to date, after a capture was filed or a unit or
+ * Brings the search text and the unit's sort key of captures up to date, after a capture was filed or a unit, a rig or a
  * condition was renamed.
  *
  * @param column - which captures: those whose column holds the id
  */
 export async function refreshFiling(
   tx: EntityManager,
-  column: 'id' | 'unit_id' | 'condition_id',
+  column: 'id' | 'unit_id' | 'condition_id' | 'rig_id',
   id: string,
 ): Promise<void> {
   const rows = await tx.query<FilingRow[]>(

@@ -7,6 +7,7 @@ import {
 } from '@benchlark/dsp';
 import { z } from 'zod';
 import { AppError } from '../common/app-error';
+import type { RigChoice } from '../rigs/rig-settings.service';
 
 /** How a capture was taken on the Live page: kept as it was said, beside the samples. */
 export interface Take {
@@ -14,7 +15,7 @@ export interface Take {
   readonly kind: string;
   /** What the first analysis measures, with which settings; the descriptor of what was played among them. */
   readonly measure: MeasureId;
-  readonly settings: AnalysisSettings;
+  readonly settings: TakeSettings;
   readonly startedAt: string;
   /** True: the unit was a practice device in the page. */
   readonly isPractice: boolean;
@@ -26,6 +27,9 @@ export interface Take {
   /** Takes of one series share its name. */
   readonly series: { readonly id: string; readonly index: number; readonly count: number } | null;
 }
+
+/** Calibration and baseline are named by their ids; the analysis is given them in full. */
+export type TakeSettings = Omit<AnalysisSettings, 'calibration' | 'baseline'> & RigChoice;
 
 export interface TakeEnd {
   readonly label: string;
@@ -56,6 +60,8 @@ const takeShape = z.strictObject({
     bandHighHz: hertz.optional(),
     highestHarmonic: z.int().min(2).max(100).optional(),
     descriptor: z.record(z.string(), z.unknown()).nullable().optional(),
+    calibrationId: z.uuid().nullable().optional(),
+    baselineId: z.uuid().nullable().optional(),
   }),
   startedAt: z.iso.datetime(),
   isPractice: z.boolean(),

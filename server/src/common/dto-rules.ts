@@ -4,6 +4,8 @@ import { Transform, Type } from 'class-transformer';
 import {
   IsBoolean,
   IsInt,
+  IsISO8601,
+  IsNumber,
   IsOptional,
   IsString,
   IsUUID,
@@ -42,6 +44,48 @@ export const NotesField = (maxLength = 10_000) =>
     trimmed(),
     IsString(),
     MaxLength(maxLength),
+  );
+
+/** A text of one line that may be left out or be empty. */
+export const ShortTextField = (maxLength = 200) => applyDecorators(NotesField(maxLength), oneLine());
+
+const calendarDay = () =>
+  applyDecorators(
+    Matches(/^\d{4}-\d{2}-\d{2}$/, { message: 'must be a date such as 2026-03-01' }),
+    IsISO8601({ strict: true }, { message: 'must be a day of the calendar' }),
+  );
+
+/** A day that must be there, YYYY-MM-DD. */
+export const DateField = (description?: string) =>
+  applyDecorators(ApiProperty({ type: String, format: 'date', description }), calendarDay());
+
+/** A day, or null to clear it. */
+export const ClearableDateField = () =>
+  applyDecorators(
+    ApiPropertyOptional({ type: String, format: 'date', nullable: true }),
+    ValidateIf((_, value) => value !== undefined && value !== null),
+    calendarDay(),
+  );
+
+export interface NumberFieldOptions {
+  readonly minimum: number;
+  readonly maximum: number;
+  readonly description?: string;
+}
+
+const finiteBetween = ({ minimum, maximum }: NumberFieldOptions) =>
+  applyDecorators(IsNumber({ allowNaN: false, allowInfinity: false }), Min(minimum), Max(maximum));
+
+/** A finite number that must be there. */
+export const NumberField = (options: NumberFieldOptions) =>
+  applyDecorators(ApiProperty({ type: Number, ...options }), finiteBetween(options));
+
+/** A finite number that may be left out, or null for none. */
+export const ClearableNumberField = (options: NumberFieldOptions) =>
+  applyDecorators(
+    ApiPropertyOptional({ type: Number, nullable: true, ...options }),
+    ValidateIf((_, value) => value !== undefined && value !== null),
+    finiteBetween(options),
   );
 
 /** A text that may be left out, or null to clear it. */

@@ -6,6 +6,8 @@ import { Worker } from '../jobs/worker.entity';
 import { RecordFigure } from '../records/record-figure.entity';
 import { RecordTrace } from '../records/record-trace.entity';
 import { BenchRecordRow } from '../records/record.entity';
+import { RigBaseline } from '../rigs/rig-baseline.entity';
+import { RigCalibration } from '../rigs/rig-calibration.entity';
 import { Rig } from '../rigs/rig.entity';
 import { StoredObject } from '../storage/stored-object.entity';
 import { UnitCondition } from '../units/unit-condition.entity';
@@ -16,6 +18,8 @@ export const archiveEntities = [
   Unit,
   UnitCondition,
   Rig,
+  RigCalibration,
+  RigBaseline,
   StoredObject,
   Capture,
   CaptureOverview,

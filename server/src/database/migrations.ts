@@ -3,6 +3,7 @@ import { CreateAccess1764570000100 } from './migrations/1764570000100-create-acc
 import { CreateMailAndAudit1764570000200 } from './migrations/1764570000200-create-mail-and-audit';
 import { CreateArchive1764580000060 } from './migrations/1764580000060-create-archive';
 import { CreateTakes1764600000000 } from './migrations/1764600000000-create-takes';
+import { CreateRigCalibrations1764601000000 } from './migrations/1764601000000-create-rig-calibrations';
 
 /** Every migration in order; one that has been merged is never edited. */
 export const migrations = [
@@ -11,4 +12,5 @@ export const migrations = [
   CreateMailAndAudit1764570000200,
   CreateArchive1764580000060,
   CreateTakes1764600000000,
+  CreateRigCalibrations1764601000000,
 ];

@@ -1,4 +1,6 @@
 import type { PracticeDevice } from '@benchlark/dsp';
+import type { CreateCalibrationDto } from '../rigs/dto/calibration.dto';
+import type { CreateRigDto } from '../rigs/dto/rig.dto';
 import type { CreateConditionDto, CreateUnitDto } from '../units/dto/write-unit.dto';
 
 /**
@@ -30,10 +32,70 @@ export interface DemoUnit {
   readonly conditions: readonly DemoCondition[];
 }
 
-export const DEMO_RIGS = [
-  { name: 'Window bench', notes: 'Interface in the rack, balanced both ways, 33 ohm load box.' },
-  { name: 'Field recorder', notes: 'Battery recorder for units that cannot leave their owner.' },
-] as const;
+/** A calibration, dated from the day on which the demo is filled, so that its state is what the demo is to show. */
+export interface DemoCalibration {
+  readonly facts: Omit<CreateCalibrationDto, 'takenOn' | 'validUntil'>;
+  readonly takenDaysAgo: number;
+  readonly validForDays: number;
+}
+
+export interface DemoRig {
+  readonly rig: CreateRigDto;
+  readonly calibrations: readonly DemoCalibration[];
+}
+
+const lineIn: Omit<CreateCalibrationDto, 'range' | 'voltsRmsAtFullScale' | 'takenOn' | 'validUntil'> = {
+  channel: 'all',
+  direction: 'input',
+  sampleRateHz: 96_000,
+  frequencyHz: 997,
+  meter: 'Thornley M6 bench meter, no. 1187',
+  meterUncertaintyPercent: 0.35,
+};
+
+export const DEMO_RIGS: readonly DemoRig[] = [
+  {
+    rig: {
+      name: 'Window bench',
+      interface: 'Merrow Tait Gannet 2, in the rack',
+      source: 'the desk computer over USB, or a memory stick',
+      cables: 'balanced, 1.5 m, Osk Lane',
+      supply: 'mains through the isolating transformer',
+      load: '33 ohm load box, 10 W',
+      limitDbfs: -1,
+      notes: 'Balanced both ways. Let it warm up for half an hour.',
+    },
+    calibrations: [
+      {
+        facts: { ...lineIn, range: 'line in, pad off', voltsRmsAtFullScale: 6.94 },
+        takenDaysAgo: 41,
+        validForDays: 365,
+      },
+      {
+        facts: {
+          ...lineIn,
+          range: 'line in, pad off, divider',
+          voltsRmsAtFullScale: 3.52,
+          dividerRatio: 10,
+          loadOhm: 33,
+          meterUncertaintyPercent: 0.6,
+          notes: 'For power amplifiers. The divider is to be measured again before the next one.',
+        },
+        takenDaysAgo: 420,
+        validForDays: 365,
+      },
+    ],
+  },
+  {
+    rig: {
+      name: 'Field recorder',
+      interface: 'Pennock Field 24',
+      supply: 'its own batteries',
+      notes: 'Battery recorder for units that cannot leave their owner.',
+    },
+    calibrations: [],
+  },
+];
 
 type Stage = PracticeDevice['stages'][number];
 

@@ -9,6 +9,9 @@ import { Capture } from '../captures/capture.entity';
 import type { UploadFieldsDto } from '../captures/dto/file-capture.dto';
 import type { SignedInPerson } from '../common/actor';
 import { readEnv } from '../config/env.schema';
+import { dayOf } from '../rigs/calibration-state';
+import { CalibrationsService } from '../rigs/calibrations.service';
+import { RigCalibration } from '../rigs/rig-calibration.entity';
 import { Rig } from '../rigs/rig.entity';
 import { RigsService } from '../rigs/rigs.service';
 import { ObjectStore } from '../storage/object-store';
@@ -19,7 +22,13 @@ import { UnitsService } from '../units/units.service';
 import { UnitCondition } from '../units/unit-condition.entity';
 import { ensureDemoPeople } from './demo-people';
 import { makeRecording } from './make-recording';
-import { DEMO_RIGS, DEMO_UNITS, DEMO_UNSORTED, type DemoTake, type DemoUnit } from './scenario';
+import { DEMO_RIGS, DEMO_UNITS, DEMO_UNSORTED, type DemoRig, type DemoTake, type DemoUnit } from './scenario';
+
+const DAY_MS = 86_400_000;
+
+function dayFromToday(days: number): string {
+  return dayOf(new Date(Date.now() + days * DAY_MS));
+}
 
 /**
  * `node server/dist/demo/seed.js`: fills an empty bench. Every step looks first whether it was done, so that a run
@@ -35,11 +44,25 @@ class Seeder {
     return this.context.get(DataSource);
   }
 
-  async findRig(name: string): Promise<string> {
+  async fileRig({ rig, calibrations }: DemoRig): Promise<void> {
+    const { name } = rig;
     const known = await this.dataSource.getRepository(Rig).findOneBy({ name });
-    if (known) return known.id;
-    const notes = DEMO_RIGS.find((rig) => rig.name === name)?.notes ?? '';
-    return (await this.context.get(RigsService).create({ name, notes })).id;
+    const rigId = known?.id ?? (await this.context.get(RigsService).create(rig, null)).id;
+    for (const { facts, takenDaysAgo, validForDays } of calibrations) {
+      const { range } = facts;
+      if (await this.dataSource.getRepository(RigCalibration).existsBy({ rigId, range })) continue;
+      const dated = {
+        ...facts,
+        takenOn: dayFromToday(-takenDaysAgo),
+        validUntil: dayFromToday(validForDays - takenDaysAgo),
+      };
+      const by = { person: this.reviewer, actor: null };
+      await this.context.get(CalibrationsService).create(rigId, dated, by);
+    }
+  }
+
+  private async rigId(name: string): Promise<string> {
+    return (await this.dataSource.getRepository(Rig).findOneByOrFail({ name })).id;
   }
 
   async fileUnit({ unit, conditions }: DemoUnit): Promise<void> {
@@ -62,7 +85,7 @@ class Seeder {
     const file = await receiveFile(Readable.from(makeRecording(take)), store.tempFolder);
     await this.context.get(CapturesService).archive({
       file: { ...file, fileName },
-      fields: { ...filing, rigId: await this.findRig(take.rig), note: take.note },
+      fields: { ...filing, rigId: await this.rigId(take.rig), note: take.note },
       person: this.reviewer,
       idempotencyKey: undefined,
     });
@@ -74,6 +97,7 @@ async function main(): Promise<void> {
   context.useLogger(context.get(Logger));
   try {
     const seeder = new Seeder(context, await ensureDemoPeople(context));
+    for (const rig of DEMO_RIGS) await seeder.fileRig(rig);
     for (const unit of DEMO_UNITS) await seeder.fileUnit(unit);
     for (const take of DEMO_UNSORTED) await seeder.archive(take, {});
   } finally {

@@ -6,8 +6,10 @@ import { AuditService } from '../audit/audit.service';
 import type { Actor, SignedInPerson } from '../common/actor';
 import { AppError } from '../common/app-error';
 import { Capture } from '../captures/capture.entity';
+import { recordedWith } from '../captures/recorded-with';
 import { AnalysisRequests } from '../jobs/analysis-requests.service';
 import { PRIORITY } from '../jobs/job-queue';
+import { RigSettingsService } from '../rigs/rig-settings.service';
 import { EvidenceService } from '../storage/evidence.service';
 import { ObjectStore } from '../storage/object-store';
 import type { RecordDto } from './dto/record.dto';
@@ -33,6 +35,7 @@ export class RecordsService {
     private readonly evidence: EvidenceService,
     private readonly store: ObjectStore,
     private readonly audit: AuditService,
+    private readonly rigSettings: RigSettingsService,
   ) {}
 
   /** The records of a capture, newest first. */
@@ -51,7 +54,7 @@ export class RecordsService {
     wanted: RequestRecordDto,
     actor: Actor & { person: SignedInPerson },
   ): Promise<RequestedRecordDto> {
-    const { measure = null, ...given } = wanted;
+    const { measure = null, calibrationId, baselineId, ...given } = wanted;
     const { fromS, toS, bandLowHz, bandHighHz } = given;
     if (fromS !== undefined && toS !== undefined && fromS >= toS) refuse('toS', 'must come after fromS');
     if (bandLowHz !== undefined && bandHighHz !== undefined && bandLowHz >= bandHighHz) {
@@ -61,12 +64,13 @@ export class RecordsService {
     if (!capture) throw new AppError('NOT_FOUND');
     if (fromS !== undefined && fromS >= capture.durationS)
       refuse('fromS', 'lies beyond the end of the recording');
-    const settings = Object.fromEntries(Object.entries(given).filter(([, value]) => value !== undefined));
+    const asGiven = Object.fromEntries(Object.entries(given).filter(([, value]) => value !== undefined));
     return this.dataSource.transaction(async (tx) => {
+      const ofRig = await this.rigSettings.resolve(recordedWith(capture), { calibrationId, baselineId }, tx);
       const asked = {
         captureId,
         measure,
-        settings,
+        settings: { ...asGiven, ...ofRig.settings },
         requestedById: actor.person.id,
         priority: PRIORITY.onDemand,
       };
@@ -77,7 +81,7 @@ export class RecordsService {
         detail: JSON.stringify(wanted),
       };
       if (requested.isNew) await this.audit.record(actor, fact, tx);
-      return requested;
+      return { ...requested, notes: ofRig.notes };
     });
   }
 

@@ -13,6 +13,7 @@ export const PLACES: readonly Place[] = [
   { to: '/live', label: 'Live', goKey: 'l', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/archive', label: 'Archive', goKey: 'a', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/units', label: 'Units', goKey: 'u', roles: ['technician', 'reviewer', 'administrator'] },
+  { to: '/rigs', label: 'Rigs', goKey: 'r', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/stimuli', label: 'Stimuli', goKey: 's', roles: ['technician', 'reviewer', 'administrator'] },
   { to: '/people', label: 'People and audit', goKey: 'p', roles: ['administrator'] },
 ];

@@ -19,6 +19,11 @@ export function formatDate(moment: Moment): string {
   return threeLetterMonth(DAY.format(toDate(moment)));
 }
 
+/** 12 Nov 2026 of a calendar day, YYYY-MM-DD: the same day everywhere. */
+export function formatDay(day: string): string {
+  return formatDate(`${day}T00:00`);
+}
+
 /** 14:11 */
 export function formatTime(moment: Moment): string {
   return TIME.format(toDate(moment));

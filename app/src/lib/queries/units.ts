@@ -33,4 +33,21 @@ export const rigQueries = {
       queryKey: [...rigQueries.all(), 'list'] as const,
       queryFn: ({ signal }) => unwrap(api.GET('/api/rigs', { signal })),
     }),
+  detail: (rigId: string) =>
+    queryOptions({
+      queryKey: [...rigQueries.all(), 'detail', rigId] as const,
+      queryFn: ({ signal }) => unwrap(api.GET('/api/rigs/{id}', { params: { path: { id: rigId } }, signal })),
+    }),
+  calibrations: (rigId: string) =>
+    queryOptions({
+      queryKey: [...rigQueries.all(), 'calibrations', rigId] as const,
+      queryFn: ({ signal }) =>
+        unwrap(api.GET('/api/rigs/{id}/calibrations', { params: { path: { id: rigId } }, signal })),
+    }),
+  baselines: (rigId: string) =>
+    queryOptions({
+      queryKey: [...rigQueries.all(), 'baselines', rigId] as const,
+      queryFn: ({ signal }) =>
+        unwrap(api.GET('/api/rigs/{id}/baselines', { params: { path: { id: rigId } }, signal })),
+    }),
 };

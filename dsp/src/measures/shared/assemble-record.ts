@@ -1,4 +1,5 @@
 import { DSP_VERSION } from '../../record/dsp-version.js';
+import { embedBaseline } from '../../record/embed-baseline.js';
 import {
   RECORD_SCHEMA,
   type BenchRecord,
@@ -75,7 +76,7 @@ export function assembleRecord(
       channel: settings.channel ?? 'all',
       descriptor: context.descriptor ?? null,
       calibration: settings.calibration ?? null,
-      baseline: settings.baseline ? withoutTraces(settings.baseline) : null,
+      baseline: settings.baseline ? embedBaseline(settings.baseline) : null,
     },
     reference: parts.reference,
     stimulus: parts.stimulus,
@@ -84,19 +85,5 @@ export function assembleRecord(
     findings: [],
     warnings: [...(context.fileWarnings ?? []), ...parts.warnings],
     segments: parts.segments ?? [],
-  };
-}
-
-/** A baseline as it is embedded: whole but for its traces and the baseline it may itself carry. */
-function withoutTraces(record: BenchRecord): BenchRecord {
-  return { ...record, ...bodyWithoutTraces(record), settings: { ...record.settings, baseline: null } };
-}
-
-function bodyWithoutTraces(body: RecordBody): RecordBody {
-  return {
-    ...body,
-    channels: body.channels.map((channel) => ({ ...channel, traces: {} })),
-    between: { figures: body.between.figures, traces: {} },
-    segments: body.segments.map(bodyWithoutTraces),
   };
 }

@@ -52,7 +52,11 @@ function mismatch(baseline: BenchRecord, body: RecordBody, conditions: BaselineC
   if (bandLowHz !== conditions.bandLowHz || bandHighHz !== conditions.bandHighHz) {
     return `its band is ${bandLowHz} to ${bandHighHz} Hz`;
   }
-  if (isOtherRange(body.settings.calibration, conditions.calibration))
+  const range = baseline.settings.inputRange ?? baseline.settings.calibration?.inputRange;
+  const ownRange = conditions.calibration?.inputRange;
+  if (range !== undefined && ownRange !== undefined && range !== ownRange)
+    return `it was taken in the recorder’s range “${range}”, and this recording in “${ownRange}”`;
+  if (isOtherFullScale(body.settings.calibration, conditions.calibration))
     return 'it was taken with the recorder in another range';
   const level = toneFigure(body, ['fundamentalLevelDbfs', 'highToneLevelDbfs']);
   if (
@@ -73,7 +77,7 @@ function mismatch(baseline: BenchRecord, body: RecordBody, conditions: BaselineC
   return null;
 }
 
-function isOtherRange(one: Calibration | null, other: Calibration | null): boolean {
+function isOtherFullScale(one: Calibration | null, other: Calibration | null): boolean {
   if (one === null || other === null) return false;
   return one.channels.some(({ channel, fullScaleVrms }) => {
     const same = other.channels.find((entry) => entry.channel === channel);

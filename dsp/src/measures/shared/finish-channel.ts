@@ -1,12 +1,19 @@
 import { makeWarning } from '../../record/make-warning.js';
-import type { ChannelResult, FigureLimit, Figures, FigureUncertainty, Warning } from '../../record/record.js';
+import type {
+  Calibration,
+  ChannelResult,
+  FigureLimit,
+  Figures,
+  FigureUncertainty,
+  Warning,
+} from '../../record/record.js';
 import type { AnalysisContext, AnalysisSettings } from '../measure.js';
 import type { FigureScale } from './figure-scale.js';
 import type { BaselineMatch } from './find-baseline.js';
 import { limitFigures } from './limits.js';
 import type { ChannelScan } from './scan-segment.js';
 import { combineUncertainty, rigDeviation, type UncertaintyComponent } from './uncertainty.js';
-import { addVolts, calibrationOf } from './volts.js';
+import { addVolts, calibrationOf, isOtherRate } from './volts.js';
 import { describeRecording, isOverloaded } from './describe-recording.js';
 
 /** A channel as its measure leaves it, before what every measure adds alike. */
@@ -48,10 +55,9 @@ export function finishChannel(
     isTooShort: draft.isTooShort,
   });
   const uncertainty = combineAll(draft, limits);
-  const calibration = calibrationOf(settings.calibration, scan.channel);
+  const rate = context.capture.sampleRateHz;
+  const calibration = calibrationOf(settings.calibration, scan.channel, rate);
   const withVolts = addVolts({ figures: draft.figures, uncertainty }, calibration, scan.constant);
-  const isUncalibrated =
-    settings.calibration !== null && settings.calibration !== undefined && calibration === null;
   return {
     result: {
       channel: scan.channel,
@@ -64,11 +70,22 @@ export function finishChannel(
       ...describeRecording(scan, context.capture),
       ...draft.warnings,
       ...warnings,
-      ...(isUncalibrated
-        ? [makeWarning('calibration-incomplete', { channel: scan.channel }, { channel: scan.channel })]
+      ...(settings.calibration && calibration === null
+        ? [missingVolts(settings.calibration, scan.channel, rate)]
         : []),
     ],
   };
+}
+
+/** Why a channel has no volts although a calibration was given. */
+function missingVolts(calibration: Calibration, channel: string, rate: number): Warning {
+  return isOtherRate(calibration, rate)
+    ? makeWarning(
+        'calibration-not-applicable',
+        { channel, calibrated: String(calibration.sampleRateHz), rate: String(rate) },
+        { channel },
+      )
+    : makeWarning('calibration-incomplete', { channel }, { channel });
 }
 
 function combineAll(

@@ -56,10 +56,21 @@ export function addVolts(
   return { figures, uncertainty };
 }
 
-/** The calibration's entry for a channel, or null. */
+/** True when the calibration says that it holds at another rate than the recording's. */
+export function isOtherRate(calibration: Calibration, sampleRateHz: number): boolean {
+  return calibration.sampleRateHz !== undefined && calibration.sampleRateHz !== sampleRateHz;
+}
+
+/**
+ * The calibration's entry for a channel, or null where it has none or holds at another rate.
+ *
+ * @param sampleRateHz - of the recording
+ */
 export function calibrationOf(
   calibration: Calibration | null | undefined,
   channel: string,
+  sampleRateHz: number,
 ): Calibration['channels'][number] | null {
+  if (calibration && isOtherRate(calibration, sampleRateHz)) return null;
   return calibration?.channels.find((entry) => entry.channel === channel) ?? null;
 }

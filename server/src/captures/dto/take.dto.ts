@@ -1,6 +1,6 @@
 import { ApiProperty, ApiPropertyOptional } from '@nestjs/swagger';
-import { MEASURE_IDS, type AnalysisSettings, type MeasureId } from '@benchlark/dsp';
-import type { Take } from '../take';
+import { MEASURE_IDS, type MeasureId } from '@benchlark/dsp';
+import type { Take, TakeSettings } from '../take';
 
 export class TakeEndDto {
   @ApiProperty()
@@ -57,8 +57,12 @@ export class TakeDto implements Take {
   @ApiProperty({ enum: MEASURE_IDS, enumName: 'MeasureId' })
   measure!: MeasureId;
 
-  @ApiProperty({ type: 'object', additionalProperties: true })
-  settings!: AnalysisSettings;
+  @ApiProperty({
+    type: 'object',
+    additionalProperties: true,
+    description: 'Of the first analysis; calibrationId and baselineId name those of the rig',
+  })
+  settings!: TakeSettings;
 
   @ApiProperty({ format: 'date-time' })
   startedAt!: string;

@@ -1,6 +1,6 @@
 import { ApiProperty, ApiPropertyOptional } from '@nestjs/swagger';
 import { MEASURE_IDS, type MeasureId } from '@benchlark/dsp';
-import { IsIn, IsInt, IsNumber, IsOptional, Max, Min } from 'class-validator';
+import { IsIn, IsInt, IsNumber, IsOptional, IsUUID, Max, Min } from 'class-validator';
 
 const DAY_S = 86_400;
 const RATE_MAX_HZ = 10_000_000;
@@ -45,6 +45,22 @@ export class RequestRecordDto {
   @Min(2)
   @Max(100)
   highestHarmonic?: number;
+
+  @ApiPropertyOptional({
+    format: 'uuid',
+    description: 'An input calibration of the recording’s rig; the record embeds it in full',
+  })
+  @IsOptional()
+  @IsUUID()
+  calibrationId?: string;
+
+  @ApiPropertyOptional({
+    format: 'uuid',
+    description: 'A baseline of the recording’s rig; the record embeds it in full',
+  })
+  @IsOptional()
+  @IsUUID()
+  baselineId?: string;
 }
 
 export class RequestedRecordDto {
@@ -53,4 +69,10 @@ export class RequestedRecordDto {
 
   @ApiProperty({ description: 'False: the same analysis was asked for before' })
   isNew!: boolean;
+
+  @ApiProperty({
+    type: [String],
+    description: 'What was accepted although it doesn’t fit the recording, in sentences',
+  })
+  notes!: readonly string[];
 }

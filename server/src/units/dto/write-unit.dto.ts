@@ -1,6 +1,7 @@
 import { ApiPropertyOptional } from '@nestjs/swagger';
-import { IsIn, IsISO8601, IsOptional, Matches, ValidateIf } from 'class-validator';
+import { IsIn, IsOptional } from 'class-validator';
 import {
+  ClearableDateField,
   ClearableNameField,
   CursorQuery,
   LimitQuery,
@@ -59,17 +60,6 @@ export class UpdateUnitDto {
   notes?: string;
 }
 
-const CalendarDate = () => [
-  ApiPropertyOptional({ type: String, format: 'date', nullable: true }),
-  ValidateIf((_: unknown, value: unknown) => value !== undefined && value !== null),
-  Matches(/^\d{4}-\d{2}-\d{2}$/, { message: 'must be a date such as 2026-03-01' }),
-  IsISO8601({ strict: true }, { message: 'must be a day of the calendar' }),
-];
-
-function StartedOnField(): PropertyDecorator {
-  return (target, key) => CalendarDate().forEach((decorate) => decorate(target, key));
-}
-
 export class CreateConditionDto {
   @NameField(120)
   name!: string;
@@ -77,7 +67,7 @@ export class CreateConditionDto {
   @NotesField()
   notes?: string;
 
-  @StartedOnField()
+  @ClearableDateField()
   startedOn?: string | null;
 }
 
@@ -88,6 +78,6 @@ export class UpdateConditionDto {
   @NotesField()
   notes?: string;
 
-  @StartedOnField()
+  @ClearableDateField()
   startedOn?: string | null;
 }

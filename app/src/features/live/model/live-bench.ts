@@ -37,6 +37,7 @@ const RISE_S = 3;
 const CHANGE_S = 0.1;
 const MOST_ATTEMPTS = 3;
 const TICK_MS = 100;
+const CLOSE_S = 1;
 /** Any stretch without damage serves as well as the whole. */
 const STEADY_MEASURES: ReadonlySet<string> = new Set(['tone', 'two-tone', 'idle', 'jitter']);
 
@@ -103,11 +104,12 @@ export class LiveBench {
     const [rig, worker] = [this.#rig, this.#worker];
     this.#rig = null;
     this.#worker = null;
-    await rig?.close();
-    worker?.stop();
     const { takes, notes } = this.#state;
     this.#state = { ...CLOSED, takes, notes };
     this.#tell();
+    worker?.stop();
+    // A context whose device is gone may never say that it is closed.
+    await Promise.race([rig?.close(), wait(CLOSE_S)]);
   }
 
   setDevice(device: PracticeDevice): void {
@@ -402,8 +404,9 @@ export class LiveBench {
       await this.stop(why);
       return;
     }
-    await this.close();
+    const closing = this.close();
     this.#set({ choice, fault: new LiveFault(why, 'Plug it in and open the rig again.') });
+    await closing;
   }
 
   async #look(form: LiveForm, tonesHz: readonly number[]): Promise<void> {

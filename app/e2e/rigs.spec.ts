@@ -1,0 +1,83 @@
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Service } from '../../server/tools/service.mjs';
+import { axeFindings, demoAccount, openBrowser, openPage, signInAs } from './support/browser';
+import { startProduct } from './support/service';
+
+const SIZES = [
+  { width: 1440, theme: 'light' },
+  { width: 1440, theme: 'dark' },
+  { width: 390, theme: 'light' },
+  { width: 390, theme: 'dark' },
+] as const;
+
+/** The rigs of the demo bench, from the list to a calibration entered by hand. */
+describe('rigs', () => {
+  let service: Service;
+  let browser: Browser;
+  beforeAll(async () => {
+    service = await startProduct({ isDemo: true });
+    browser = await openBrowser();
+  });
+  afterAll(async () => {
+    await browser?.close();
+    await service?.stop();
+  });
+
+  const isScrollingSideways = (page: Page): Promise<boolean> =>
+    page.evaluate('document.documentElement.scrollWidth > document.documentElement.clientWidth + 1');
+  const expectSound = async (page: Page) => {
+    await page.waitForLoadState('networkidle');
+    expect(await axeFindings(page)).toEqual([]);
+    expect(await isScrollingSideways(page)).toBe(false);
+  };
+  const signedIn = async (size: (typeof SIZES)[number]) => {
+    const opened = await openPage(browser, size);
+    await signInAs(opened.page, service.url, await demoAccount(service.url, 'technician'));
+    return opened;
+  };
+
+  it.each(SIZES)('have nothing for axe to find at $width px, $theme', async (size) => {
+    const { page, faults } = await signedIn(size);
+    await page.goto(`${service.url}/rigs`);
+    await page.getByRole('link', { name: 'Window bench' }).waitFor();
+    await expectSound(page);
+    await page.getByRole('link', { name: 'Window bench' }).click();
+    await page.getByText('has an expired calibration').waitFor();
+    await expectSound(page);
+    for (const name of ['Change the facts', 'Add a calibration', 'Name a baseline']) {
+      await page.getByRole('button', { name }).click();
+      await page.getByRole('dialog').waitFor();
+      await expectSound(page);
+      await page.keyboard.press('Escape');
+      await page.getByRole('dialog').waitFor({ state: 'detached' });
+    }
+    expect(faults).toEqual([]);
+  });
+
+  it('are calibrated without a pointer, and the newer calibration ends the warning', async () => {
+    const { page } = await signedIn(SIZES[0]);
+    await page.locator('main').waitFor();
+    await page.keyboard.press('g');
+    await page.keyboard.press('r');
+    await page.getByRole('link', { name: 'Window bench' }).press('Enter');
+    const warning = page.getByText('has an expired calibration');
+    await warning.waitFor();
+    await page.getByRole('button', { name: 'Add a calibration' }).press('Enter');
+    const fill = (label: string, text: string) => page.getByLabel(label, { exact: true }).fill(text);
+    await fill('Range or gain', 'line in, pad off, divider');
+    await fill('Sample rate (Hz)', '96000');
+    await fill('Meter reads (V RMS)', '0.352');
+    await fill('Recording shows (dBFS)', '-20');
+    await fill('Divider', '10');
+    // A tenth of the voltage is 20 dB down; a divider of 10 makes 3.52 V ten times as much.
+    await page.getByText(/with a divider of 10 is 35\.2\sV at full scale\./).waitFor();
+    await fill('Meter', 'Thornley M6 bench meter, no. 1187');
+    await fill('Uncertainty (%)', '0,5');
+    await page.getByRole('button', { name: 'Enter it for good' }).press('Enter');
+    await page.getByRole('dialog').waitFor({ state: 'detached' });
+    await page.getByText(/expired on .*, followed by a newer one/).waitFor();
+    expect(await warning.count()).toBe(0);
+    expect(await page.getByRole('row', { name: /35\.2\sV RMS ±0\.5\s%/ }).count()).toBe(1);
+  });
+});

@@ -1,0 +1,1 @@
+export { RigsPage as Component } from '@/features/rigs/components/rigs-page';
