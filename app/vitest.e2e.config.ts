@@ -9,7 +9,8 @@ export default defineConfig({
   test: {
     include: ['e2e/**/*.spec.ts'],
     environment: 'node',
-    fileParallelism: false,
+    // Much of a test is waiting: for sound, for a page to settle. More at once would wait for the processor.
+    maxWorkers: 2,
     testTimeout: 120_000,
     hookTimeout: 180_000,
   },

@@ -76,8 +76,14 @@ describe.each([48_000, 96_000])('through the system at %s Hz', (rateHz) => {
     await openRig();
     await page.getByRole('button', { name: 'Check the rig' }).click();
     await confirmCaution();
-    await page.getByText(/Output left came back on left, as it should/).waitFor({ timeout: 20_000 });
-    await page.getByText(/Output right came back on right, as it should/).waitFor();
+    await page.getByText(/Output right/).waitFor({ timeout: 20_000 });
+    const found = page.getByText(/Output (left came back on left|right came back on right), as it should/);
+    // A busy machine may damage the very blocks that hold a chirp: three tries.
+    for (let attempt = 0; attempt < 3 && (await found.count()) < 2; attempt += 1) {
+      await page.getByRole('button', { name: 'Check the rig' }).click();
+      await page.getByRole('button', { name: 'Checking' }).waitFor({ state: 'hidden' });
+    }
+    expect(await found.count()).toBe(2);
   });
 
   it('says which grid the samples really sit on', async () => {

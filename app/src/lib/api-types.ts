@@ -1149,6 +1149,11 @@ export interface components {
        * @description To be sent as baselineId
        */
       id: string;
+      /**
+       * Format: uuid
+       * @description The record it was taken from, with its traces
+       */
+      recordId: string;
       measure: components['schemas']['MeasureId'];
       inputRange: string;
       sampleRateHz: number;

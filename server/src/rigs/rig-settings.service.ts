@@ -97,6 +97,7 @@ export class RigSettingsService {
     const baseline = await baselineOf(row, this.dataSource.manager);
     return {
       id: row.id,
+      recordId: row.recordId,
       measure: baseline.measure,
       inputRange: row.inputRange,
       sampleRateHz: row.sampleRateHz,

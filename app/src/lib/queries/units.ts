@@ -44,6 +44,13 @@ export const rigQueries = {
       queryFn: ({ signal }) =>
         unwrap(api.GET('/api/rigs/{id}/calibrations', { params: { path: { id: rigId } }, signal })),
     }),
+  /** What the Live page may use of a rig today. */
+  liveSettings: (rigId: string) =>
+    queryOptions({
+      queryKey: [...rigQueries.all(), 'live-settings', rigId] as const,
+      queryFn: ({ signal }) =>
+        unwrap(api.GET('/api/rigs/{id}/live-settings', { params: { path: { id: rigId } }, signal })),
+    }),
   baselines: (rigId: string) =>
     queryOptions({
       queryKey: [...rigQueries.all(), 'baselines', rigId] as const,

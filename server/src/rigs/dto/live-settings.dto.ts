@@ -33,6 +33,9 @@ export class LiveBaselineDto {
   @ApiProperty({ format: 'uuid', description: 'To be sent as baselineId' })
   id!: string;
 
+  @ApiProperty({ format: 'uuid', description: 'The record it was taken from, with its traces' })
+  recordId!: string;
+
   @ApiProperty({ enum: MEASURE_IDS, enumName: 'MeasureId' })
   measure!: MeasureId;
 

@@ -1,11 +1,12 @@
 import { AlertDialog, Button, Checkbox, Flex } from '@radix-ui/themes';
 import { useState } from 'react';
 import { formatLevel } from '@/lib/format/quantity';
+import { voltsWords, type RigUse } from '../model/rig-use';
 
 interface CautionDialogProps {
   isOpen: boolean;
   levelDbfs: number;
-  limitDbfs: number;
+  use: RigUse;
   onOpenChange: (isOpen: boolean) => void;
   onConfirm: () => void;
 }
@@ -17,7 +18,7 @@ const CHECKS = [
 ] as const;
 
 /** Before the first sound of an opened rig. The button stays off until every box is ticked. */
-export function CautionDialog({ isOpen, levelDbfs, limitDbfs, onOpenChange, onConfirm }: CautionDialogProps) {
+export function CautionDialog({ isOpen, levelDbfs, use, onOpenChange, onConfirm }: CautionDialogProps) {
   const [ticked, setTicked] = useState<readonly number[]>([]);
   const isReady = ticked.length === CHECKS.length;
   const close = (next: boolean) => {
@@ -29,10 +30,12 @@ export function CautionDialog({ isOpen, levelDbfs, limitDbfs, onOpenChange, onCo
       <AlertDialog.Content maxWidth="480px">
         <AlertDialog.Title size="4">Sound is about to leave the computer</AlertDialog.Title>
         <AlertDialog.Description size="2">
-          Up to {formatLevel(levelDbfs)}. At full scale a test tone can destroy tweeters and hearing within a
-          second. A steady tone starts at {formatLevel(Math.min(-40, levelDbfs))} and rises over 3 s;{' '}
-          {limitDbfs < 0
-            ? `this rig never plays above ${formatLevel(limitDbfs)}.`
+          Up to {formatLevel(levelDbfs)}
+          {use.outputVrms !== null && `, ${voltsWords(use.outputVrms, levelDbfs)}`}. At full scale a test tone
+          can destroy tweeters and hearing within a second. A steady tone starts at{' '}
+          {formatLevel(Math.min(-40, levelDbfs))} and rises over 3 s;{' '}
+          {use.limitDbfs < 0
+            ? `this rig never plays above ${formatLevel(use.limitDbfs)}.`
             : 'this rig has no limit of its own.'}{' '}
           Esc stops it at any time. Where mains or high voltages are within reach, ask somebody qualified and
           keep to your local rules.

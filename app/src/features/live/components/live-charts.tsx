@@ -9,6 +9,7 @@ import { channelName } from '@/lib/capture-words';
 import { formatNumber } from '@/lib/format/number';
 import { withUnit } from '@/lib/format/quantity';
 import { useLive } from '../hooks/live-bench-context';
+import { useRigFloor } from '../hooks/use-rig-floor';
 import { spanOf, tonesOf, type LiveForm } from '../model/live-form';
 import type { SpectrumPicture } from '../worker/live-types';
 
@@ -18,23 +19,33 @@ const LEVELS_DBFS = [-160, 0] as const;
 interface LiveChartsProps {
   form: LiveForm;
   conditions: string;
+  /** Of the rig's baseline. */
+  baselineRecordId: string | null;
 }
 
 /** What comes out, and what is left of it over one wave. */
-export function LiveCharts({ form, conditions }: LiveChartsProps) {
+export function LiveCharts({ form, conditions, baselineRecordId }: LiveChartsProps) {
   const source: ChartSource = useMemo(
     () => ({ recordId: null, date: new Date().toISOString(), conditions, fileStem: 'live' }),
     [conditions],
   );
   return (
     <>
-      <LiveSpectrum form={form} source={source} />
+      <LiveSpectrum form={form} source={source} baselineRecordId={baselineRecordId} />
       <LiveResidual source={source} />
     </>
   );
 }
 
-function LiveSpectrum({ form, source }: { form: LiveForm; source: ChartSource }) {
+function LiveSpectrum({
+  form,
+  source,
+  baselineRecordId,
+}: {
+  form: LiveForm;
+  source: ChartSource;
+  baselineRecordId: string | null;
+}) {
   const picture = useLive((state) => state.spectrum);
   const reference = useLive((state) => state.reference);
   const record = useLive((state) => state.figures?.record ?? null);
@@ -67,6 +78,7 @@ function LiveSpectrum({ form, source }: { form: LiveForm; source: ChartSource })
     closeHz === null ? [wholeHz[0], highestHz] : [Math.max(1, closeHz / 1.1), closeHz * 1.1];
   const bandHz = useMemo(() => [lowHz, topHz] as const, [lowHz, topHz]);
   const binHz = picture ? picture.sampleRateHz / picture.fftLength : null;
+  const rigAlone = useRigFloor(baselineRecordId, binHz);
   return (
     <SpectrumChart
       title="Spectrum"
@@ -78,6 +90,7 @@ function LiveSpectrum({ form, source }: { form: LiveForm; source: ChartSource })
       state={stateOf(picture !== null)}
       channels={channels}
       references={references}
+      rigAlone={rigAlone}
       fundamentalHz={closeHz === null ? fundamentalHz : null}
       harmonics={harmonics}
       bandHz={bandHz}

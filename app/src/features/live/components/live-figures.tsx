@@ -3,12 +3,15 @@ import { Figure } from '@/components/figures/figure';
 import { SeverityMark } from '@/components/figures/severity-mark';
 import { WorthKey } from '@/components/figures/worth-mark';
 import { MarginBlock } from '@/components/page/page';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
+import { Sentence, SlotSelect } from '@/components/sentence/slot';
 import { channelName } from '@/lib/capture-words';
 import { describeFigure } from '@/lib/figures';
 import { MINUS } from '@/lib/format/number';
 import { worthOfFigure, type Worth } from '@/lib/worth';
 import { useLive } from '../hooks/live-bench-context';
+import { LEVEL_UNITS, readLevel, type LevelUnit } from '../model/level-units';
+import type { RigUse } from '../model/rig-use';
 
 const SHOWN: Readonly<Record<string, readonly string[]>> = {
   tone: ['fundamentalLevelDbfs', 'thdDb', 'thdPlusNoiseDb', 'noiseDbfs', 'noiseAWeightedDbfs'],
@@ -19,7 +22,8 @@ const SHOWN: Readonly<Record<string, readonly string[]>> = {
 const MOST_CHANNELS = 2;
 
 /** The stored measure on the last moments, twice a second at most. */
-export function LiveFigures() {
+export function LiveFigures({ use }: { use: RigUse }) {
+  const [unit, setUnit] = useState<LevelUnit>('dBFS');
   const record = useLive((state) => state.figures?.record ?? null);
   if (!record) {
     return (
@@ -29,11 +33,30 @@ export function LiveFigures() {
     );
   }
   const channels = record.channels.slice(0, MOST_CHANNELS);
+  const isCalibrated = channels.some(
+    ({ figures }) => figures['noiseV'] !== undefined || figures['fundamentalLevelV'] !== undefined,
+  );
+  const shownUnit = isCalibrated ? unit : 'dBFS';
+  const units = LEVEL_UNITS.filter((one) => one !== 'W' || use.loadOhm !== null);
   const keys = (SHOWN[record.measure] ?? []).filter((key) =>
     channels.some(({ figures }) => figures[key] !== undefined),
   );
   return (
     <MarginBlock title="Figures now">
+      {isCalibrated && (
+        <Sentence>
+          Levels in{' '}
+          <SlotSelect
+            label="Level unit"
+            value={shownUnit}
+            options={units.map((one) => ({
+              value: one,
+              label: one === 'W' ? `W into ${use.loadOhm} Ω` : one,
+            }))}
+            onChange={setUnit}
+          />
+        </Sentence>
+      )}
       <table className="bl-table bl-live-figures">
         <thead>
           <tr>
@@ -49,19 +72,23 @@ export function LiveFigures() {
         </thead>
         <tbody>
           {keys.map((key) => {
-            const { label, unit } = describeFigure(key);
+            const described = describeFigure(key);
+            const { label } = described;
+            const isLevel = readLevel(key, {}, shownUnit, null) !== null;
             return (
               <tr key={key}>
                 <th scope="row">
                   {label}
-                  <span className="bl-table-second">{unit}</span>
+                  <span className="bl-table-second">{isLevel ? shownUnit : described.unit}</span>
                 </th>
                 {channels.map(({ channel, figures, limits }) => (
                   <td key={channel}>
                     <Figure
-                      figureKey={key}
-                      value={figures[key]}
-                      limit={limits[key]}
+                      {...(readLevel(key, figures, shownUnit, use.loadOhm) ?? {
+                        figureKey: key,
+                        value: figures[key],
+                      })}
+                      limit={shownUnit === 'dBFS' || !isLevel ? limits[key] : undefined}
                       size="live"
                       integerCh={4}
                       fractionCh={3}

@@ -1,11 +1,12 @@
 import { Button } from '@radix-ui/themes';
 import { useMemo, useRef, useState, type ReactNode } from 'react';
+import { Link } from 'react-router-dom';
 import { FilingSlots } from '@/components/filing/filing-slots';
 import { KeyCap } from '@/components/key-cap';
 import { TheLine } from '@/components/line/the-line';
 import { Columns, Page, Section, WarningBlock } from '@/components/page/page';
 import { PageHead } from '@/components/page/page-head';
-import { Sentence } from '@/components/sentence/slot';
+import { Sentence, SlotSelect } from '@/components/sentence/slot';
 import { unitName } from '@/lib/capture-words';
 import { useFilingChoices } from '@/lib/use-filing-choices';
 import type { Delivered } from '../audio/audio-rig';
@@ -15,6 +16,7 @@ import { useFiling } from '../hooks/use-filing';
 import { useLiveForm } from '../hooks/use-live-form';
 import { useLiveKeys } from '../hooks/use-live-keys';
 import { useRigPick } from '../hooks/use-rig-pick';
+import { useRigUse } from '../hooks/use-rig-use';
 import { lineStations } from '../model/line-stations';
 import { isTake, type LiveForm } from '../model/live-form';
 import { practiceDeviceOf, type PracticeFaults } from '../model/practice-faults';
@@ -46,8 +48,6 @@ export function LivePage({ renderTake }: LivePageProps) {
   );
 }
 
-const NO_LIMIT_DBFS = 0;
-
 function LiveDesk({ renderTake }: LivePageProps) {
   const bench = useLiveBench();
   const choices = useFilingChoices();
@@ -63,6 +63,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
   const isHeld = useLive((state) => state.isHeld);
   const takes = useLive((state) => state.takes);
   const notice = useLive((state) => state.notice);
+  const fault = useLive((state) => state.fault);
   const isPractice = useLive((state) => state.choice?.kind === 'practice');
   const sampleRateHz = useLive((state) => state.delivered?.outputRateHz ?? setup.pick.sampleRateHz);
   const { sendings, sent, keep } = useArchiveTakes();
@@ -73,12 +74,12 @@ function LiveDesk({ renderTake }: LivePageProps) {
   const [confirmedFor, setConfirmedFor] = useState<Delivered | null>(null);
   const delivered = useLive((state) => state.delivered);
   const noteRef = useRef<HTMLInputElement>(null);
-  const limitDbfs = NO_LIMIT_DBFS;
+  const { use, ranges, setRange, isUnread } = useRigUse(filing.rigId, sampleRateHz);
   const isOpen = rig === 'open';
   const description = [unit ? unitName(unit) : null, condition?.name, rigOnBooks?.name]
     .filter(Boolean)
     .join(', ');
-  const orders = { form, filing, limitDbfs, description };
+  const orders = { form, filing, description };
 
   /** Sound leaves the computer only once the caution has been confirmed since the rig was opened. */
   const withCare = (act: () => void) => {
@@ -86,15 +87,16 @@ function LiveDesk({ renderTake }: LivePageProps) {
     else setPending(() => act);
   };
   const start = () => {
-    if (!isOpen || take) return;
+    // A rig whose limit can't be read may not play louder than it allows, and so not at all.
+    if (!isOpen || take || (isUnread && !isPractice)) return;
     setOpenId(null);
-    withCare(() => void (isTake(form) ? bench.runTake(orders) : bench.play(form, limitDbfs)));
+    withCare(() => void (isTake(form) ? bench.runTake(orders) : bench.play(form)));
   };
   const stop = () => void bench.stop();
   const changeForm = (part: Partial<LiveForm>) => {
     const next = change(part);
     if (playing && isTake(next)) stop();
-    else if (playing) void bench.play(next, limitDbfs);
+    else if (playing) void bench.play(next);
     else void bench.setLook(next);
   };
   const keepTone = () => {
@@ -143,7 +145,19 @@ function LiveDesk({ renderTake }: LivePageProps) {
       <div className="bl-live-order">
         <div>
           <Sentence>
-            On the bench: <FilingSlots {...choices} value={filing} onChange={setFiling} />.
+            On the bench: <FilingSlots {...choices} value={filing} onChange={setFiling} />
+            {ranges.length > 0 && use.range !== null && (
+              <>
+                {', its input set to '}
+                <SlotSelect
+                  label="Input range"
+                  value={use.range}
+                  options={ranges.map((range) => ({ value: range, label: range }))}
+                  onChange={setRange}
+                />
+              </>
+            )}
+            .
           </Sentence>
           {isOpen && <LiveSentence form={form} sampleRateHz={sampleRateHz} onChange={changeForm} />}
         </div>
@@ -173,16 +187,27 @@ function LiveDesk({ renderTake }: LivePageProps) {
       </div>
       <TakeBand onStop={stop} />
       <div role="status">{notice && <WarningBlock lead={notice} />}</div>
+      {fault && (
+        <div role="alert">
+          <WarningBlock
+            tone="fault"
+            lead={fault.message}
+            wayOut={<Link to="/archive">Upload a file instead</Link>}
+          >
+            {fault.remedy}
+          </WarningBlock>
+        </div>
+      )}
       <Columns
         margin={
           <>
             {isOpen && (
               <>
-                <LiveFigures />
+                <LiveFigures use={use} />
                 <LiveShows />
                 <OutputBlock
-                  levelDbfs={Math.min(form.levelDbfs, limitDbfs)}
-                  limitDbfs={limitDbfs}
+                  levelDbfs={Math.min(form.levelDbfs, use.limitDbfs)}
+                  use={use}
                   isPractice={isPractice}
                   onChange={(levelDbfs) => changeForm({ levelDbfs })}
                 />
@@ -198,7 +223,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
             />
             {isOpen && (
               <>
-                <RigBlock onCheck={() => withCare(() => void bench.checkItself())} />
+                <RigBlock use={use} onCheck={() => withCare(() => void bench.checkItself())} />
                 <NotesBlock fieldRef={noteRef} />
               </>
             )}
@@ -212,6 +237,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
         ) : isOpen ? (
           <LiveMain
             form={form}
+            baselineRecordId={isPractice ? null : (use.baseline?.recordId ?? null)}
             conditions={description}
             practice={
               isPractice && (
@@ -238,8 +264,8 @@ function LiveDesk({ renderTake }: LivePageProps) {
       </Columns>
       <CautionDialog
         isOpen={pending !== null}
-        levelDbfs={Math.min(form.levelDbfs, limitDbfs)}
-        limitDbfs={limitDbfs}
+        levelDbfs={Math.min(form.levelDbfs, use.limitDbfs)}
+        use={use}
         onOpenChange={(next) => !next && setPending(null)}
         onConfirm={() => {
           setConfirmedFor(delivered);
@@ -270,10 +296,12 @@ function LiveLine({ form, unit, rigName }: { form: LiveForm; unit: string; rigNa
 
 function LiveMain({
   form,
+  baselineRecordId,
   conditions,
   practice,
 }: {
   form: LiveForm;
+  baselineRecordId: string | null;
   conditions: string;
   practice: ReactNode;
 }) {
@@ -282,7 +310,7 @@ function LiveMain({
   const hasSpectrum = useLive((state) => state.spectrum !== null);
   return (
     <>
-      <LiveCharts form={form} conditions={conditions} />
+      <LiveCharts form={form} conditions={conditions} baselineRecordId={baselineRecordId} />
       <p className="bl-live-words">
         <button
           type="button"

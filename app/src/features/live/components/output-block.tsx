@@ -1,10 +1,11 @@
 import { Button } from '@radix-ui/themes';
 import { MarginBlock } from '@/components/page/page';
 import { formatLevel } from '@/lib/format/quantity';
+import { voltsWords, type RigUse } from '../model/rig-use';
 
 interface OutputBlockProps {
   levelDbfs: number;
-  limitDbfs: number;
+  use: RigUse;
   isPractice: boolean;
   onChange: (levelDbfs: number) => void;
 }
@@ -12,8 +13,8 @@ interface OutputBlockProps {
 const LOWEST_DBFS = -140;
 
 /** The level in steps of 1 dB: no fader that a sleeve can push up. */
-export function OutputBlock({ levelDbfs, limitDbfs, isPractice, onChange }: OutputBlockProps) {
-  const highest = Math.min(0, limitDbfs);
+export function OutputBlock({ levelDbfs, use, isPractice, onChange }: OutputBlockProps) {
+  const highest = Math.min(0, use.limitDbfs);
   const step = (by: number) => onChange(Math.min(highest, Math.max(LOWEST_DBFS, levelDbfs + by)));
   return (
     <MarginBlock title="Output">
@@ -28,7 +29,10 @@ export function OutputBlock({ levelDbfs, limitDbfs, isPractice, onChange }: Outp
         >
           −
         </Button>
-        <output aria-live="polite">{formatLevel(levelDbfs)}</output>
+        <output aria-live="polite">
+          {formatLevel(levelDbfs)}
+          {use.outputVrms !== null && !isPractice && `, ${voltsWords(use.outputVrms, levelDbfs)}`}
+        </output>
         <Button
           variant="surface"
           color="gray"

@@ -1,21 +1,24 @@
 import type { SelfCheckResult } from '@benchlark/dsp';
 import { Button } from '@radix-ui/themes';
 import { Link } from 'react-router-dom';
-import { Facts, MarginBlock, WarningBlock } from '@/components/page/page';
+import { Facts, MarginBlock, WarningBlock, type Fact } from '@/components/page/page';
+import { formatDate } from '@/lib/format/date';
 import { formatNumber } from '@/lib/format/number';
 import { formatLevel, formatSampleRate, withUnit } from '@/lib/format/quantity';
 import type { Delivered } from '../audio/audio-rig';
 import { useLive, useLiveBench } from '../hooks/live-bench-context';
 import { gridWords } from '../model/grid-words';
+import type { RigUse } from '../model/rig-use';
 
 /** What the browser really delivers, told from its own words and from the samples. */
-export function RigBlock({ onCheck }: { onCheck: () => void }) {
+export function RigBlock({ use, onCheck }: { use: RigUse; onCheck: () => void }) {
   const bench = useLiveBench();
   const delivered = useLive((state) => state.delivered);
   const grid = useLive((state) => state.input?.grid ?? null);
   const rateHz = useLive((state) => state.input?.sampleRateHz ?? null);
   const channelCount = useLive((state) => state.input?.channelCount ?? null);
   const check = useLive((state) => state.selfCheck);
+  const isPractice = useLive((state) => state.choice?.kind === 'practice');
   const isTaking = useLive((state) => state.take !== null);
   if (!delivered) return null;
   const words = grid ? gridWords(grid) : null;
@@ -33,6 +36,7 @@ export function RigBlock({ onCheck }: { onCheck: () => void }) {
             term: 'processing',
             detail: delivered.processing.length === 0 ? 'none' : delivered.processing.join(', '),
           },
+          ...(isPractice ? [] : booksOf(use)),
           { term: 'read', detail: delivered.path === 'track' ? 'off the track itself' : 'by a worklet' },
         ]}
       />
@@ -69,6 +73,19 @@ export function RigBlock({ onCheck }: { onCheck: () => void }) {
       <div role="status">{check !== null && check !== 'running' && <CheckWords check={check} />}</div>
     </MarginBlock>
   );
+}
+
+/** What the rig's books give at this rate and range; without them levels stay against full scale. */
+function booksOf({ calibration, baseline, range, limitDbfs }: RigUse): Fact[] {
+  const none = 'none at this rate';
+  return [
+    {
+      term: 'calibration',
+      detail: calibration ? `of ${formatDate(calibration.content.date)}, ${range}` : none,
+    },
+    { term: 'rig alone', detail: baseline ? 'baseline on the books' : none },
+    { term: 'limit', detail: limitDbfs < 0 ? formatLevel(limitDbfs) : 'none' },
+  ];
 }
 
 function rateWords({ askedRateHz, outputRateHz }: Delivered, inputRateHz: number): string {

@@ -1,7 +1,6 @@
 import { Button } from '@radix-ui/themes';
 import { useEffect, useState } from 'react';
-import { Link } from 'react-router-dom';
-import { Section, WarningBlock } from '@/components/page/page';
+import { Section } from '@/components/page/page';
 import { Sentence, SlotSelect } from '@/components/sentence/slot';
 import { formatSampleRate } from '@/lib/format/quantity';
 import { listDevices } from '../audio/open-interface';
@@ -23,7 +22,6 @@ const SYSTEM = 'system';
 export function RigSetup({ pick, faults, onPick, onFaults }: RigSetupProps) {
   const bench = useLiveBench();
   const rig = useLive((state) => state.rig);
-  const fault = useLive((state) => state.fault);
   const devices = useDevices(rig);
   const isPractice = pick.kind === 'practice';
   const open = () =>
@@ -79,17 +77,6 @@ export function RigSetup({ pick, faults, onPick, onFaults }: RigSetupProps) {
           The browser asks for the microphone the first time: it calls every input so. Names of inputs and
           outputs come after that. It must run at the interface’s own rate: set that in the system.
         </p>
-      )}
-      {fault && (
-        <div role="alert">
-          <WarningBlock
-            tone="fault"
-            lead={fault.message}
-            wayOut={<Link to="/archive">Upload a file instead</Link>}
-          >
-            {fault.remedy}
-          </WarningBlock>
-        </div>
       )}
       <p className="bl-live-open">
         <Button size="3" disabled={rig === 'opening'} onClick={open}>

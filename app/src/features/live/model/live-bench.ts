@@ -3,11 +3,12 @@ import { proxy, type Remote } from 'comlink';
 import { AudioRig, type InputFeed, type Playing, type RigChoice } from '../audio/audio-rig';
 import { LiveFault, liveFaultOf } from '../audio/live-fault';
 import type { TakeStore } from '../store/take-store';
-import type { InputState, LiveSink, Look, TakeRequest, TakeResult } from '../worker/live-types';
+import type { InputState, LiveSink, Look, RigSettings, TakeRequest, TakeResult } from '../worker/live-types';
 import type { LiveWorkerApi } from '../worker/live.worker';
 import { transferFeed } from '../worker/transfer-feed';
 import { cappedLevelDbfs, spanOf, steadyTones, stimulusOptions, tonesOf, type LiveForm } from './live-form';
 import { CLOSED, type LiveState, type TakeProgress } from './live-state';
+import { UNKNOWN_RIG, type RigUse } from './rig-use';
 import { statementOf, takeFileName, type Filing, type LocalTake } from './take';
 import { signalOf, type SignalKind } from './take-kinds';
 
@@ -23,8 +24,6 @@ export interface LiveBenchParts {
 export interface TakeOrders {
   readonly form: LiveForm;
   readonly filing: Filing;
-  /** Of the rig, dBFS; nothing is ever played louder. */
-  readonly limitDbfs: number;
   /** Unit and rig in words, for the file itself. */
   readonly description: string;
 }
@@ -37,6 +36,7 @@ const RISE_S = 3;
 const CHANGE_S = 0.1;
 const MOST_ATTEMPTS = 3;
 const TICK_MS = 100;
+const INPUT_GONE = 'The input is gone: it was unplugged, or its permission taken back.';
 const CLOSE_S = 1;
 /** Any stretch without damage serves as well as the whole. */
 const STEADY_MEASURES: ReadonlySet<string> = new Set(['tone', 'two-tone', 'idle', 'jitter']);
@@ -55,6 +55,7 @@ export class LiveBench {
   #worker: { readonly api: Remote<LiveWorkerApi>; readonly stop: () => void } | null = null;
   #rig: AudioRig | null = null;
   #playing: Playing | null = null;
+  #use: RigUse = UNKNOWN_RIG;
   /** Why the take under way is to end before its time. */
   #stopWhy: string | null = null;
   #takeBeganMs = 0;
@@ -82,8 +83,7 @@ export class LiveBench {
     this.#set({ rig: 'opening', choice, fault: null, notice: null });
     try {
       const rig = await this.#parts.openRig(choice, {
-        onInputEnded: () =>
-          void this.#lose('The input is gone: it was unplugged, or its permission taken back.'),
+        onInputEnded: () => void this.#lose(INPUT_GONE),
         onOutputEnded: () =>
           void this.#lose('The output is gone: it was unplugged, and the system may play elsewhere.'),
         onInputMuted: (isMuted) => this.#set({ isMuted }),
@@ -120,11 +120,20 @@ export class LiveBench {
     void this.#worker?.api.noteChange();
   }
 
+  /** What the books say of the rig; a lower limit holds at once. */
+  async setUse(use: RigUse): Promise<void> {
+    if (use === this.#use) return;
+    this.#use = use;
+    const { playing } = this.#state;
+    if (playing && playing.levelDbfs > use.limitDbfs) await this.play(playing.form);
+    else if (playing) await this.setLook(playing.form);
+  }
+
   /** Plays a steady signal, or changes the one that plays. A first one begins quietly and rises. */
-  async play(form: LiveForm, limitDbfs: number): Promise<void> {
+  async play(form: LiveForm): Promise<void> {
     const rig = this.#rig;
     if (!rig || this.#state.take) return;
-    const levelDbfs = cappedLevelDbfs(form, limitDbfs);
+    const levelDbfs = cappedLevelDbfs(form, this.#use.limitDbfs);
     const isFirst = this.#state.playing === null;
     const rampS = isFirst && levelDbfs > RISE_FROM_DBFS ? RISE_S : CHANGE_S;
     rig.setTone({
@@ -266,7 +275,7 @@ export class LiveBench {
       this.#progress(progress, 'making', 0, null);
       const options = stimulusOptions(orders.form, kind, {
         sampleRateHz: rig.sampleRateHz,
-        limitDbfs: orders.limitDbfs,
+        limitDbfs: this.#use.limitDbfs,
       });
       const { channels, descriptor } = await api.render(kind.stimulus ?? '', options);
       await this.#look(orders.form, []);
@@ -327,6 +336,16 @@ export class LiveBench {
       isPractice: this.#state.choice?.kind === 'practice',
       startedAt,
       description,
+      ...this.#known(),
+    };
+  }
+
+  /** A practice device is no rig: nothing that was measured on one holds for it. */
+  #known(): RigSettings {
+    const isReal = this.#state.choice?.kind === 'interface';
+    return {
+      calibration: isReal ? (this.#use.calibration?.content ?? null) : null,
+      baseline: isReal ? (this.#use.baseline?.content ?? null) : null,
     };
   }
 
@@ -362,6 +381,8 @@ export class LiveBench {
         result,
         notes: this.#state.notes,
         series,
+        calibrationId: isPractice ? null : (this.#use.calibration?.id ?? null),
+        baselineId: isPractice ? null : (this.#use.baseline?.id ?? null),
       }),
       filing: orders.filing,
       madeAt: startedAt,
@@ -382,7 +403,7 @@ export class LiveBench {
         if (!this.#state.isHeld) this.#set({ figures });
       },
       onState: (input) => this.#hear(input),
-      onEnd: (why) => void this.#lose(why ?? 'The input ended.'),
+      onEnd: (why) => void this.#lose(why ?? INPUT_GONE),
     };
     await api.open(transferFeed(feed), this.#rig?.sampleRateHz ?? 0, proxy(sink));
   }
@@ -416,6 +437,7 @@ export class LiveBench {
       bandLowHz: spanOf(form).bandHz[0],
       bandHighHz: spanOf(form).bandHz[1],
       tonesHz,
+      ...this.#known(),
     };
     await this.#worker?.api.setLook(look);
   }

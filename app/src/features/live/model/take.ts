@@ -65,15 +65,24 @@ export interface StatementParts {
   readonly result: TakeResult;
   readonly notes: readonly TakeNote[];
   readonly series: TakeStatement['series'];
+  /** Of the rig's books; the server embeds what they name. */
+  readonly calibrationId: string | null;
+  readonly baselineId: string | null;
 }
 
 export function statementOf(parts: StatementParts): TakeStatement {
   const { kind, measure, descriptor, startedAt, isPractice, delivered, result, notes, series } = parts;
+  const { calibrationId, baselineId } = parts;
   return {
     schema: 'benchlark-take/1',
     kind,
     measure,
-    settings: { ...result.settings, ...(descriptor ? { descriptor } : {}) },
+    settings: {
+      ...result.settings,
+      ...(descriptor ? { descriptor } : {}),
+      ...(calibrationId ? { calibrationId } : {}),
+      ...(baselineId ? { baselineId } : {}),
+    },
     startedAt,
     isPractice,
     input: {

@@ -20,8 +20,18 @@ const REQUEST: TakeRequest = {
   isPractice: true,
   startedAt: '2026-03-04T05:06:07.000Z',
   description: '',
+  calibration: null,
+  baseline: null,
 };
-const LOOK = { fftLength: 16_384, averages: 4, bandLowHz: 20, bandHighHz: 20_000, tonesHz: [997] };
+const LOOK = {
+  fftLength: 16_384,
+  averages: 4,
+  bandLowHz: 20,
+  bandHighHz: 20_000,
+  tonesHz: [997],
+  calibration: null,
+  baseline: null,
+};
 const nothing = () => undefined;
 
 /** Squares and cubes that give a second harmonic of -60 dB and a third of -80 dB at this level. */

@@ -10,6 +10,7 @@ import {
   readSelfCheck,
   SELF_CHECK_DURATION_S,
   undoAsymmetricScaling,
+  type AnalysisSettings,
   type Break,
   type BreakDetector,
   type GridDetector,
@@ -17,7 +18,7 @@ import {
   type SelfCheckResult,
 } from '@benchlark/dsp';
 import { longestCleanStretch } from './clean-stretch';
-import type { LiveSink, Look, TakeRequest, TakeResult } from './live-types';
+import type { LiveSink, Look, RigSettings, TakeRequest, TakeResult } from './live-types';
 import type { InputBlock } from './read-feed';
 import { Recording } from './recording';
 
@@ -38,6 +39,8 @@ const DEFAULT_LOOK: Look = {
   bandLowHz: 20,
   bandHighHz: 20_000,
   tonesHz: [],
+  calibration: null,
+  baseline: null,
 };
 
 /** Everything that is done with an input's samples, block by block, in the worker. */
@@ -234,7 +237,7 @@ export class LiveDesk {
 
   /** The stored measure on the newest frames: the same code, on less. */
   async #measureNow(): Promise<void> {
-    const { fftLength, bandLowHz, bandHighHz, tonesHz } = this.#look;
+    const { fftLength, bandLowHz, bandHighHz, tonesHz, calibration, baseline } = this.#look;
     const channels = this.#analyser?.newest(Math.max(fftLength, 32_768)) ?? [];
     if ((channels[0]?.length ?? 0) < Math.min(fftLength, SHORTEST_TONE_S * this.#rateHz)) return;
     this.#isMeasuring = true;
@@ -244,7 +247,11 @@ export class LiveDesk {
         tonesHz.length === 0 ? 'idle' : tonesHz.length === 2 ? 'two-tone' : 'tone',
       ).analyse(
         source,
-        { bandLowHz, bandHighHz: Math.min(bandHighHz, this.#rateHz / 2) },
+        {
+          bandLowHz,
+          bandHighHz: Math.min(bandHighHz, this.#rateHz / 2),
+          ...knownOf({ calibration, baseline }),
+        },
         {
           capture: {
             sha256: '',
@@ -281,7 +288,10 @@ export class LiveDesk {
     const { record, failure } = await analyseCapture(
       file,
       sha256,
-      { measure: request.measure, settings: { ...settings, ...(descriptor ? { descriptor } : {}) } },
+      {
+        measure: request.measure,
+        settings: { ...settings, ...knownOf(request), ...(descriptor ? { descriptor } : {}) },
+      },
       { onProgress },
     ).then(
       (analysis) => ({ record: analysis.record, failure: null }),
@@ -316,6 +326,11 @@ function isClipped(samples: Float32Array): boolean {
     if (Math.abs(value) >= END_CODE && value === samples[n - 1] && value === samples[n - 2]) return true;
   }
   return false;
+}
+
+/** Left out where there is none, as the server leaves it out. */
+function knownOf({ calibration, baseline }: RigSettings): Pick<AnalysisSettings, 'calibration' | 'baseline'> {
+  return { ...(calibration ? { calibration } : {}), ...(baseline ? { baseline } : {}) };
 }
 
 /** Measures that any stretch of a steady signal serves as well as the whole. */

@@ -1,7 +1,20 @@
-import type { BenchRecord, Break, InputGrid, MeasureId, StimulusDescriptor } from '@benchlark/dsp';
+import type {
+  BenchRecord,
+  Break,
+  Calibration,
+  InputGrid,
+  MeasureId,
+  StimulusDescriptor,
+} from '@benchlark/dsp';
+
+/** What is known of the rig that is worked on; goes into the settings of every analysis, in full. */
+export interface RigSettings {
+  readonly calibration: Calibration | null;
+  readonly baseline: BenchRecord | null;
+}
 
 /** How the live picture is made. */
-export interface Look {
+export interface Look extends RigSettings {
   readonly fftLength: number;
   readonly averages: number;
   readonly bandLowHz: number;
@@ -48,7 +61,7 @@ export interface LiveSink {
 }
 
 /** What is recorded for, so that its bytes, its place in time and its record can be made. */
-export interface TakeRequest {
+export interface TakeRequest extends RigSettings {
   readonly measure: MeasureId;
   readonly descriptor: StimulusDescriptor | null;
   readonly bandLowHz: number;
