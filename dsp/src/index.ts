@@ -75,3 +75,7 @@ export * from './live/input-grid.js';
 export * from './live/live-analyser.js';
 export * from './live/self-check.js';
 export { HIGHEST_RATE_HZ, LOWEST_RATE_HZ, MOST_CHANNELS } from './wav/read-format.js';
+export * from './amplifier/riaa-curve.js';
+export * from './amplifier/riaa-deviation.js';
+export * from './amplifier/output-impedance.js';
+export * from './amplifier/output-power.js';
