@@ -322,3 +322,66 @@ describe('usage', () => {
     expect((await cli()).code).toBe(2);
   });
 });
+
+describe('sums of a bench', () => {
+  const record = async (wav: string, ...more: string[]): Promise<string> => {
+    const name = wav.replace('.wav', '.record.json');
+    const { out, code } = await cli('analyse', wav, '--json', '--traces', 'full', ...more);
+    expect(code).toBe(0);
+    writeFileSync(join(folder, name), out);
+    return name;
+  };
+  const through = async (from: string, to: string, stages: unknown[]): Promise<void> => {
+    const device = { schema: 'benchlark-device/1', name: 'bench', sampleRateHz: null, seed: 1, stages };
+    writeFileSync(join(folder, `${to}.device.json`), JSON.stringify(device));
+    expect((await cli('practice', from, to, '--device', `${to}.device.json`)).code).toBe(0);
+  };
+
+  it('tell the impedance of a known divider, and a bound where the load takes nothing', async () => {
+    // 0.5 ohm into 8 ohms takes 20 lg(8.5 / 8) = 0.5266 dB (Ohm's law).
+    await through('tone.wav', 'loaded.wav', [
+      { kind: 'gain', channel: 'both', gainDb: -20 * Math.log10(8.5 / 8) },
+    ]);
+    const open = await record('tone.wav', '--measure', 'tone');
+    const loaded = await record('loaded.wav', '--measure', 'tone');
+    const told = await cli('impedance', open, loaded, '--load', '8');
+    expect(told.out).toMatch(/left: at 997 Hz the load takes 0\.526\d dB: 0\.500 ohm .*damping factor 16\.0/);
+    expect((await cli('impedance', open, open, '--load', '8')).out).toMatch(
+      /below 0\.0026 ohm, no more can be told/,
+    );
+    expect((await cli('impedance', open, '--load', '8')).code).toBe(2);
+  });
+
+  it('tell the power at a limit, and how far a flat stage is from the replay curve', async () => {
+    await cli('stimulus', 'level-steps', '--rate', '48000', '--level', '0', '--out', 'steps.wav');
+    await through('steps.wav', 'clipping.wav', [
+      { kind: 'clip', channel: 'both', positive: 0.5, negative: 0.5 },
+      { kind: 'noise', channel: 'both', levelDbfs: -110 },
+    ]);
+    const steps = await record('clipping.wav');
+    writeFileSync(
+      join(folder, 'volts.json'),
+      JSON.stringify({
+        schema: 'benchlark-calibration/1',
+        date: '2026-01-02',
+        channels: ['left', 'right'].map((channel) => ({ channel, fullScaleVrms: 20, expandedPercent: 1 })),
+      }),
+    );
+    const { out } = await cli('power', steps, '--calibration', 'volts.json', '--load', '8', '--json');
+    const [left] = JSON.parse(out) as { atLimits: { powerW: number; lowW: number; highW: number }[] }[];
+    // Cut off at half of full scale, 1 % is reached at a peak of 0.5 / 0.971487 (Fourier series of a clipped sine).
+    const about = (20 * (0.5 / 0.971487)) ** 2 / 8;
+    const { powerW, lowW, highW } = left!.atLimits[1]!;
+    expect(Math.abs(10 * Math.log10(powerW / about))).toBeLessThan(0.3);
+    expect(lowW).toBeLessThan(powerW);
+    expect(highW).toBeGreaterThan(powerW);
+
+    await cli('stimulus', 'sweep', '--rate', '48000', '--out', 'sweep.wav');
+    const sweep = await record('sweep.wav');
+    // The published table has +19.27 dB at 20 Hz and -19.62 dB at 20 kHz.
+    expect((await cli('phono', sweep)).out).toMatch(
+      /left: \+19\.[56]\d dB from the replay curve at (19|20)\d\d\d Hz/,
+    );
+    expect((await cli('phono', steps)).err).toMatch(/a sweep's record is needed/);
+  });
+});

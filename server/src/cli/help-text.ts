@@ -40,6 +40,13 @@ export const HELP = `Benchlark's command line
                        ${listNames(STIMULUS_NAMES, 23)}
       --bits 16|24|32f  --level DBFS  --ceiling DBFS  --frequency HZ  --low HZ --high HZ (pairs)  --duration S
       --channels both|left|right  --dither tpdf|none  --seed N  --bare  --quick (the programme in 30 s)
+  power STEPS.json --calibration FILE.json --load OHM
+                       watts at 0.1 and 1 % THD+N from level steps  [--input-volts V at 0 dBFS: gain; --json]
+  impedance UNLOADED.json LOADED.json --load OHM
+                       output impedance and damping factor from two takes of a tone
+                       [--uncertainty DB of one level against the other, 0.001; --json]
+  phono SWEEP.json     deviation from the replay curve of records
+                       [--amendment; --recorded: the sweep had the recording curve; --json]
   practice IN.wav OUT.wav --device FILE.json|NAME
                        pass a recording through a practice device
   upload FILE.wav... --to URL --token T

@@ -1,4 +1,5 @@
 import { runAnalyse } from './analyse-command';
+import { runImpedance, runPhono, runPower } from './bench-sums-command';
 import { CliError, EXIT, type CliIo, type ExitCode } from './cli-io';
 import { describeFailure } from './describe-failure';
 import { HELP } from './help-text';
@@ -15,6 +16,9 @@ const COMMANDS: ReadonlyMap<string, Command> = new Map<string, Command>([
   ['inspect', runInspect],
   ['verify', runVerify],
   ['stimulus', runStimulus],
+  ['power', runPower],
+  ['impedance', runImpedance],
+  ['phono', runPhono],
   ['practice', runPractice],
   ['upload', runUpload],
 ]);
@@ -32,7 +36,7 @@ function bindNegativeNumbers(args: readonly string[]): string[] {
 }
 
 /** Options without a value. */
-const SWITCHES: ReadonlySet<string> = new Set(['--json', '--bare', '--help']);
+const SWITCHES: ReadonlySet<string> = new Set(['--json', '--bare', '--help', '--amendment', '--recorded']);
 
 /** The file an error line names: the first word that is neither an option nor an option's value. */
 function subjectOf(name: string, args: readonly string[]): string {
