@@ -12,7 +12,6 @@ import {
 import { startProduct } from './support/service';
 import { waitUntil } from './support/wait-until';
 
-const WIDTHS = [1440, 390] as const;
 type Width = (typeof WIDTHS)[number];
 
 /** Every page of the demo bench, at both widths and in both themes. */
@@ -79,19 +78,6 @@ describe('the pages of a bench', () => {
     await page.getByRole('heading', { level: 1 }).waitFor();
     await page.waitForLoadState('networkidle');
     return page;
-  };
-
-  const isScrollingSideways = (page: Page): Promise<boolean> =>
-    page.evaluate('document.documentElement.scrollWidth > document.documentElement.clientWidth + 1');
-
-  /** All of axe in one theme; in the other what a theme can change, which is contrast. */
-  const expectSound = async (page: Page): Promise<void> => {
-    expect(await axeFindings(page)).toEqual([]);
-    expect(await isScrollingSideways(page)).toBe(false);
-    await page.emulateMedia({ colorScheme: 'dark' });
-    await page.locator('.dark').first().waitFor();
-    expect(await contrastFindings(page)).toEqual([]);
-    expect(await isScrollingSideways(page)).toBe(false);
   };
 
   describe.each(WIDTHS)(

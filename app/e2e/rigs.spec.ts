@@ -1,15 +1,8 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Service } from '../../server/tools/service.mjs';
-import { axeFindings, demoAccount, openBrowser, openPage, signInAs } from './support/browser';
+import { demoAccount, expectSound, openBrowser, openPage, signInAs, WIDTHS } from './support/browser';
 import { startProduct } from './support/service';
-
-const SIZES = [
-  { width: 1440, theme: 'light' },
-  { width: 1440, theme: 'dark' },
-  { width: 390, theme: 'light' },
-  { width: 390, theme: 'dark' },
-] as const;
 
 /** The rigs of the demo bench, from the list to a calibration entered by hand. */
 describe('rigs', () => {
@@ -24,21 +17,14 @@ describe('rigs', () => {
     await service?.stop();
   });
 
-  const isScrollingSideways = (page: Page): Promise<boolean> =>
-    page.evaluate('document.documentElement.scrollWidth > document.documentElement.clientWidth + 1');
-  const expectSound = async (page: Page) => {
-    await page.waitForLoadState('networkidle');
-    expect(await axeFindings(page)).toEqual([]);
-    expect(await isScrollingSideways(page)).toBe(false);
-  };
-  const signedIn = async (size: (typeof SIZES)[number]) => {
-    const opened = await openPage(browser, size);
+  const signedIn = async (width: (typeof WIDTHS)[number]) => {
+    const opened = await openPage(browser, { width });
     await signInAs(opened.page, service.url, await demoAccount(service.url, 'technician'));
     return opened;
   };
 
-  it.each(SIZES)('have nothing for axe to find at $width px, $theme', async (size) => {
-    const { page, faults } = await signedIn(size);
+  it.each(WIDTHS)('have nothing for axe to find at %s px, light and dark', async (width) => {
+    const { page, faults } = await signedIn(width);
     await page.goto(`${service.url}/rigs`);
     await page.getByRole('link', { name: 'Window bench' }).waitFor();
     await expectSound(page);
@@ -56,7 +42,7 @@ describe('rigs', () => {
   });
 
   it('are calibrated without a pointer, and the newer calibration ends the warning', async () => {
-    const { page } = await signedIn(SIZES[0]);
+    const { page } = await signedIn(1440);
     await page.locator('main').waitFor();
     await page.keyboard.press('g');
     await page.keyboard.press('r');

@@ -37,24 +37,24 @@ function counted(name, command, args, options) {
   return { passed, failed: failed === 0 && !isGood ? 1 : failed };
 }
 
-const vitest = (name, config) => () =>
-  counted(
-    config ? 'e2e' : name,
-    'vitest',
-    (report) => [
-      'run',
-      ...(config ?? []),
-      '--reporter=default',
-      '--reporter=json',
-      `--outputFile.json=${report}`,
-    ],
-    { cwd: path.join(ROOT, name), env: { TEST_DATABASE_URL: testDatabaseUrl } },
-  );
+const vitest =
+  (workspace, name = workspace, args = []) =>
+  () =>
+    counted(
+      name,
+      'vitest',
+      (report) => ['run', ...args, '--reporter=default', '--reporter=json', `--outputFile.json=${report}`],
+      { cwd: path.join(ROOT, workspace), env: { TEST_DATABASE_URL: testDatabaseUrl } },
+    );
 
 let testDatabaseUrl = '';
 
 /** Write WAV files that are not our own. */
 const PUBLIC_TOOLS = ['sox', 'ffmpeg', 'sndfile-programs'];
+
+/** Plays and records through the operating system. */
+const SOUND = 'e2e/live-system.spec.ts';
+const SOUND_TOOLS = ['pulseaudio', 'pulseaudio-utils'];
 
 const STEPS = {
   format: whole('prettier', '--check', '--log-level', 'warn', '.'),
@@ -67,7 +67,9 @@ const STEPS = {
       cwd: path.join(ROOT, 'server'),
       env: { TEST_DATABASE_URL: testDatabaseUrl },
     }),
-  e2e: vitest('app', ['--config', 'vitest.e2e.config.ts']),
+  e2e: vitest('app', 'e2e', ['--config', 'vitest.e2e.config.ts', '--exclude', SOUND]),
+  // Alone: it plays and records in real time.
+  sound: vitest('app', 'sound', ['--config', 'vitest.e2e.config.ts', SOUND]),
 };
 
 function chosenSteps() {
@@ -84,16 +86,20 @@ async function prepare(steps) {
   await installPackages();
   mkdirSync(REPORTS, { recursive: true });
   await build();
-  if (steps.includes('server') || steps.includes('e2e')) {
+  const isInBrowser = steps.includes('e2e') || steps.includes('sound');
+  if (steps.includes('server') || isInBrowser) {
     testDatabaseUrl = (await startCluster({ isTest: true })).adminUrl;
   }
-  if (steps.includes('e2e')) {
+  if (isInBrowser) {
     ensureDebian('command -v chromium', ['chromium'], 'the end-to-end tests');
     ensureDebian(
       'command -v sox && command -v ffmpeg && command -v sndfile-convert',
       PUBLIC_TOOLS,
       'the end-to-end tests',
     );
+  }
+  if (steps.includes('sound')) {
+    ensureDebian('command -v pulseaudio && command -v pactl', SOUND_TOOLS, 'the tests through the system');
   }
 }
 

@@ -1,5 +1,6 @@
 import AxeBuilder from '@axe-core/playwright';
 import { chromium, type Browser, type Page } from 'playwright-core';
+import { expect } from 'vitest';
 import { CHROMIUM, CHROMIUM_FLAGS } from '../../../server/tools/in-browser.mjs';
 
 export function openBrowser(): Promise<Browser> {
@@ -71,4 +72,19 @@ async function findingsOf(builder: AxeBuilder): Promise<string[]> {
   return violations.map(
     ({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html.slice(0, 120)).join(' | ')}`,
   );
+}
+
+export const WIDTHS = [1440, 390] as const;
+
+const isScrollingSideways = (page: Page): Promise<boolean> =>
+  page.evaluate('document.documentElement.scrollWidth > document.documentElement.clientWidth + 1');
+
+/** All of axe in the light theme; in the dark one what a theme can change, which is contrast. No sideways scrolling. */
+export async function expectSound(page: Page): Promise<void> {
+  expect(await axeFindings(page)).toEqual([]);
+  expect(await isScrollingSideways(page)).toBe(false);
+  await page.emulateMedia({ colorScheme: 'dark' });
+  await page.locator('.dark').first().waitFor();
+  expect(await contrastFindings(page)).toEqual([]);
+  await page.emulateMedia({ colorScheme: 'light' });
 }

@@ -16,6 +16,8 @@ export interface InterfaceChoice {
   readonly sampleRateHz: number;
 }
 
+const LOOK_MS = 2000;
+
 /** Each of these mixes, bends or cuts what comes in. */
 const PROCESSING = {
   echoCancellation: 'echo cancellation',
@@ -112,7 +114,12 @@ export function watchDevices(
   };
   const onChange = () => void look();
   media.addEventListener('devicechange', onChange);
-  return () => media.removeEventListener('devicechange', onChange);
+  // Some systems tell the browser of a device that went only when it asks.
+  const timer = setInterval(onChange, LOOK_MS);
+  return () => {
+    clearInterval(timer);
+    media.removeEventListener('devicechange', onChange);
+  };
 }
 
 /** Some browsers don't say the track's rate, and some refuse another than their own. */
