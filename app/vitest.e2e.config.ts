@@ -8,6 +8,8 @@ export default defineConfig({
   },
   test: {
     include: ['e2e/**/*.spec.ts'],
+    exclude: ['e2e/live-system.spec.ts'], // vitest.sound.config.ts
+    globalSetup: './e2e/support/shared-demo-setup.ts',
     environment: 'node',
     // Much of a test is waiting: for sound, for a page to settle. More at once would wait for the processor.
     maxWorkers: 2,

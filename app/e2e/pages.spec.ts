@@ -1,28 +1,19 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { Service } from '../../server/tools/service.mjs';
-import {
-  axeFindings,
-  contrastFindings,
-  demoAccount,
-  openBrowser,
-  openPage,
-  signInAs,
-} from './support/browser';
-import { startProduct } from './support/service';
-import { waitUntil } from './support/wait-until';
+import { demoAccount, expectSound, openBrowser, openPage, signInAs, WIDTHS } from './support/browser';
+import { demoCaptures, sharedDemo } from './support/shared-demo';
 
 type Width = (typeof WIDTHS)[number];
 
 /** Every page of the demo bench, at both widths and in both themes. */
 describe('the pages of a bench', () => {
-  let service: Service;
+  let service: { readonly url: string };
   let browser: Browser;
   const pages = new Map<string, { page: Page; faults: string[] }>();
   let addresses: Record<string, string>;
 
   beforeAll(async () => {
-    service = await startProduct({ isDemo: true });
+    service = sharedDemo();
     browser = await openBrowser();
     for (const width of WIDTHS) {
       for (const role of ['anonymous', 'reviewer', 'administrator']) {
@@ -36,14 +27,7 @@ describe('the pages of a bench', () => {
     const { page } = pages.get('reviewer 1440')!;
     const getJson = async <T>(address: string): Promise<T> =>
       (await (await page.request.get(`${service.url}${address}`)).json()) as T;
-    const listStates = async () =>
-      (await getJson<{ items: { id: string; fileName: string; state: string }[] }>('/api/captures?limit=50'))
-        .items;
-    await waitUntil(async () => (await listStates()).every(({ state }) => state === 'done'), {
-      what: 'the demo captures are analysed',
-      timeoutMs: 120_000,
-    });
-    const captures = await listStates();
+    const captures = await demoCaptures(getJson);
     const named = (part: string): string => captures.find(({ fileName }) => fileName.includes(part))!.id;
     const units = await getJson<{ items: { id: string }[] }>('/api/units');
     addresses = {
@@ -68,7 +52,6 @@ describe('the pages of a bench', () => {
 
   afterAll(async () => {
     await browser?.close();
-    await service?.stop();
   });
 
   const visit = async (role: string, width: Width, address: string): Promise<Page> => {

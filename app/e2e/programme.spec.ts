@@ -1,38 +1,30 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { Service } from '../../server/tools/service.mjs';
 import { demoAccount, openBrowser, openPage, signInAs } from './support/browser';
-import { startProduct } from './support/service';
-import { waitUntil } from './support/wait-until';
+import { demoCaptures, sharedDemo } from './support/shared-demo';
 
 /** A programme's record: what is proposed, the table of its parts, each in full, and back. */
 describe('a programme on its page', () => {
-  let service: Service;
+  let service: { readonly url: string };
   let browser: Browser;
   let page: Page;
   let captureId: string;
 
   beforeAll(async () => {
-    service = await startProduct({ isDemo: true });
+    service = sharedDemo();
     browser = await openBrowser();
     ({ page } = await openPage(browser));
     await signInAs(page, service.url, await demoAccount(service.url, 'reviewer'));
-    await waitUntil(
-      async () => {
-        const answer = await page.request.get(`${service.url}/api/captures?q=candle-220417-programme`);
-        const { items } = (await answer.json()) as { items: { id: string; state: string }[] };
-        captureId = items[0]?.id ?? '';
-        return items[0]?.state === 'done';
-      },
-      { what: 'the programme is analysed', timeoutMs: 120_000 },
+    const captures = await demoCaptures(async (address) =>
+      (await page.request.get(`${service.url}${address}`)).json(),
     );
+    captureId = captures.find(({ fileName }) => fileName.includes('candle-220417-programme'))!.id;
     await page.goto(`${service.url}/captures/${captureId}`);
     await page.getByRole('heading', { name: 'What the programme holds' }).waitFor();
   });
 
   afterAll(async () => {
     await browser?.close();
-    await service?.stop();
   });
 
   it('says what the pinched output does, as the demo’s device was told to', async () => {

@@ -1,20 +1,18 @@
-import type { Browser, Page } from 'playwright-core';
+import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { Service } from '../../server/tools/service.mjs';
 import { demoAccount, expectSound, openBrowser, openPage, signInAs, WIDTHS } from './support/browser';
-import { startProduct } from './support/service';
+import { sharedDemo } from './support/shared-demo';
 
 /** The rigs of the demo bench, from the list to a calibration entered by hand. */
 describe('rigs', () => {
-  let service: Service;
+  let service: { readonly url: string };
   let browser: Browser;
   beforeAll(async () => {
-    service = await startProduct({ isDemo: true });
+    service = sharedDemo();
     browser = await openBrowser();
   });
   afterAll(async () => {
     await browser?.close();
-    await service?.stop();
   });
 
   const signedIn = async (width: (typeof WIDTHS)[number]) => {

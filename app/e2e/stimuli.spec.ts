@@ -3,18 +3,17 @@ import { readFileSync } from 'node:fs';
 import { createStimulus, encodeWavBlocks, parseDescriptor } from '@benchlark/dsp';
 import type { Browser, Download, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { Service } from '../../server/tools/service.mjs';
 import { demoAccount, openBrowser, openPage, signInAs } from './support/browser';
-import { startProduct } from './support/service';
+import { sharedDemo } from './support/shared-demo';
 
 /** A stimulus is chosen, set word by word, and taken away as a file with its descriptor. */
 describe('the stimuli', () => {
-  let service: Service;
+  let service: { readonly url: string };
   let browser: Browser;
   let page: Page;
 
   beforeAll(async () => {
-    service = await startProduct({ isDemo: true });
+    service = sharedDemo();
     browser = await openBrowser();
     ({ page } = await openPage(browser));
     await signInAs(page, service.url, await demoAccount(service.url, 'technician'));
@@ -22,7 +21,6 @@ describe('the stimuli', () => {
 
   afterAll(async () => {
     await browser?.close();
-    await service?.stop();
   });
 
   /** Both files that one press of the button brings, by their names. */

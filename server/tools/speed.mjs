@@ -1,5 +1,5 @@
 // npm run speed: the benchmark. Prints tables, then the same figures as one line of JSON.
-//   npm run speed -- --only fft,tone,programme,findings,large,browser,upload,list
+//   npm run speed -- --only fft,tone,programme,findings,large,browser,upload,list,live
 import { mkdtempSync, rmSync } from 'node:fs';
 import { cpus, tmpdir } from 'node:os';
 import path from 'node:path';
@@ -24,9 +24,10 @@ async function main() {
   const { measureList, measureUpload, signInAsReviewer } = await import('./speed/archive.mjs');
   const { startService } = await import('./service.mjs');
   const { measureBrowserTone } = await import('./speed/browser.mjs');
+  const { measureLive } = await import('./speed/live.mjs');
 
   const parts = new Set(
-    chosenParts(['fft', 'tone', 'programme', 'findings', 'large', 'browser', 'upload', 'list']),
+    chosenParts(['fft', 'tone', 'programme', 'findings', 'large', 'browser', 'upload', 'list', 'live']),
   );
   const folder = mkdtempSync(path.join(tmpdir(), 'benchlark-speed-'));
   const figures = { node: process.version, cpu: cpus()[0]?.model, cores: cpus().length };
@@ -43,13 +44,17 @@ async function main() {
       ensureDebian('command -v chromium', ['chromium'], 'the benchmark in a browser');
       figures.browser = await measureBrowserTone(large);
     }
-    if (parts.has('upload') || parts.has('list')) {
+    if (parts.has('upload') || parts.has('list') || parts.has('live')) {
       const { adminUrl } = await startCluster();
       const service = await startService({ adminUrl, env: { DEMO: 'true' }, seed: 'demo/seed.js' });
       try {
         const call = await signInAsReviewer(service);
         if (parts.has('upload')) figures.upload = await measureUpload(service, call, large);
         if (parts.has('list')) figures.list = await measureList(service, call);
+        if (parts.has('live')) {
+          ensureDebian('command -v chromium', ['chromium'], 'the benchmark of the Live page');
+          figures.live = await measureLive(service);
+        }
       } finally {
         await service.stop();
       }

@@ -52,8 +52,7 @@ let testDatabaseUrl = '';
 /** Write WAV files that are not our own. */
 const PUBLIC_TOOLS = ['sox', 'ffmpeg', 'sndfile-programs'];
 
-/** Plays and records through the operating system. */
-const SOUND = 'e2e/live-system.spec.ts';
+/** Play and record through the operating system. */
 const SOUND_TOOLS = ['pulseaudio', 'pulseaudio-utils'];
 
 const STEPS = {
@@ -67,9 +66,8 @@ const STEPS = {
       cwd: path.join(ROOT, 'server'),
       env: { TEST_DATABASE_URL: testDatabaseUrl },
     }),
-  e2e: vitest('app', 'e2e', ['--config', 'vitest.e2e.config.ts', '--exclude', SOUND]),
-  // Alone: it plays and records in real time.
-  sound: vitest('app', 'sound', ['--config', 'vitest.e2e.config.ts', SOUND]),
+  e2e: vitest('app', 'e2e', ['--config', 'vitest.e2e.config.ts']),
+  sound: vitest('app', 'sound', ['--config', 'vitest.sound.config.ts']),
 };
 
 function chosenSteps() {
