@@ -55,6 +55,19 @@ async function settle(page) {
   await sleep(400);
 }
 
+/** A faulty practice device under a tone, once its averages are full. */
+async function playPractice(page) {
+  await page.getByRole('button', { name: /^Left cut off at, / }).click();
+  await page.getByRole('textbox').fill('-2.35');
+  await page.keyboard.press('Enter');
+  await page.getByRole('button', { name: 'Open the practice device' }).click();
+  await page.getByRole('button', { name: /^Level, / }).click();
+  await page.getByRole('dialog').getByRole('textbox').fill('-1');
+  await page.keyboard.press('Enter');
+  await page.getByRole('button', { name: /^Play/ }).click();
+  await sleep(12_000);
+}
+
 async function main() {
   await setup();
   ensureDebian('command -v chromium', ['chromium'], 'taking screenshots');
@@ -83,6 +96,7 @@ async function main() {
     const items = await waitForAnalyses(reviewer, service.url);
     const named = (part) => items.find(({ fileName }) => fileName.includes(part));
     const { items: units } = await getJson(reviewer, `${service.url}/api/units`);
+    const { items: rigs } = await getJson(reviewer, `${service.url}/api/rigs`);
     const unit = units.find(({ model }) => model === 'Corrie H2');
     const pages = {
       'sign-in': { address: '/sign-in', role: null },
@@ -102,21 +116,35 @@ async function main() {
         ]),
       ),
       stimuli: { address: '/stimuli?name=level-steps', role: 'reviewer' },
+      live: { address: '/live', role: 'reviewer', act: playPractice },
+      rigs: { address: '/rigs', role: 'reviewer' },
+      rig: { address: `/rigs/${rigs.find(({ name }) => name === 'Window bench').id}`, role: 'reviewer' },
       units: { address: '/units', role: 'reviewer' },
       unit: { address: `/units/${unit.id}`, role: 'reviewer' },
       account: { address: '/account', role: 'reviewer' },
       people: { address: '/people', role: 'administrator' },
     };
-    const tour = ['today', 'archive', 'capture', 'idle', 'unit', 'programme', 'level-steps', 'stimuli'];
+    const tour = [
+      'today',
+      'archive',
+      'capture',
+      'idle',
+      'unit',
+      'programme',
+      'level-steps',
+      'stimuli',
+      'live',
+    ];
     for (const width of isAll ? [1440, 390] : [1440]) {
       for (const theme of isAll ? ['light', 'dark'] : ['light']) {
         const opened = { null: await open(width, theme, null) };
         for (const role of ['reviewer', 'administrator']) opened[role] = await open(width, theme, role);
-        for (const [name, { address, role }] of Object.entries(pages)) {
+        for (const [name, { address, role, act }] of Object.entries(pages)) {
           if (!isAll && !tour.includes(name)) continue;
           const page = opened[role];
           await page.goto(`${service.url}${address}`);
           await settle(page);
+          if (act) await act(page);
           const file = isAll ? `${name}-${theme}-${width}.png` : `${name}.png`;
           await page.screenshot({ path: path.join(folder, file), fullPage: true });
         }
