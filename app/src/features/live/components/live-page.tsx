@@ -1,6 +1,7 @@
 import { Button } from '@radix-ui/themes';
 import { useMemo, useRef, useState, type ReactNode } from 'react';
-import { Link } from 'react-router-dom';
+import { Link, useBlocker } from 'react-router-dom';
+import { ConfirmDialog } from '@/components/forms/confirm-dialog';
 import { FilingSlots } from '@/components/filing/filing-slots';
 import { KeyCap } from '@/components/key-cap';
 import { TheLine } from '@/components/line/the-line';
@@ -262,6 +263,7 @@ function LiveDesk({ renderTake }: LivePageProps) {
           />
         )}
       </Columns>
+      <LeaveGuard isTaking={take !== null} />
       <CautionDialog
         isOpen={pending !== null}
         levelDbfs={Math.min(form.levelDbfs, use.limitDbfs)}
@@ -273,6 +275,26 @@ function LiveDesk({ renderTake }: LivePageProps) {
         }}
       />
     </Page>
+  );
+}
+
+/** Another page would end the take under way. */
+function LeaveGuard({ isTaking }: { isTaking: boolean }) {
+  const blocker = useBlocker(
+    ({ currentLocation, nextLocation }) => isTaking && currentLocation.pathname !== nextLocation.pathname,
+  );
+  return (
+    <ConfirmDialog
+      isOpen={blocker.state === 'blocked'}
+      onOpenChange={() => blocker.reset?.()}
+      title="End the take and leave?"
+      confirmLabel="End it and leave"
+      cancelLabel="Stay"
+      isDestructive
+      onConfirm={() => blocker.proceed?.()}
+    >
+      A take is under way. Leaving the page ends every sound, and what was recorded of this take is lost.
+    </ConfirmDialog>
   );
 }
 

@@ -4,11 +4,15 @@ import { Link } from 'react-router-dom';
 import { ConfirmDialog } from '@/components/forms/confirm-dialog';
 import { downloadBlob } from '@/components/charts/download-blob';
 import { MarginBlock, WarningBlock } from '@/components/page/page';
+import { channelName } from '@/lib/capture-words';
+import { describeFigure } from '@/lib/figures';
+import { formatFigureLine } from '@/lib/format/figure';
 import { formatDateTime } from '@/lib/format/date';
 import { formatCounted, formatDuration, formatPercent } from '@/lib/format/quantity';
 import type { Sending } from '../hooks/use-archive-takes';
 import { useLiveBench } from '../hooks/live-bench-context';
 import type { Agreement } from '../model/archive-take';
+import { seriesOf, spreadsOf, type Spread } from '../model/spread';
 import type { LocalTake } from '../model/take';
 
 interface TakesBlockProps {
@@ -67,6 +71,9 @@ export function TakesBlock({ takes, sent, sendings, openId, onOpen, onKeep }: Ta
           </li>
         ))}
       </ul>
+      {seriesOf(all).map(({ id, title, records }) => (
+        <SeriesSpread key={id} title={title} spreads={spreadsOf(records)} count={records.length} />
+      ))}
       <ConfirmDialog
         isOpen={doomed !== null}
         onOpenChange={() => setDoomed(null)}
@@ -84,6 +91,38 @@ export function TakesBlock({ takes, sent, sendings, openId, onOpen, onKeep }: Ta
         It is in this browser alone. Its recording and its figures can’t be had back.
       </ConfirmDialog>
     </MarginBlock>
+  );
+}
+
+/** What repeats tell: how far a single take may lie from the next. */
+function SeriesSpread({
+  title,
+  spreads,
+  count,
+}: {
+  title: string;
+  spreads: readonly Spread[];
+  count: number;
+}) {
+  return (
+    <>
+      <p>
+        <strong>
+          {formatCounted(count, 'repeat')} of {title}
+        </strong>
+      </p>
+      <ul className="bl-live-notes">
+        {spreads.map(({ key, channel, mean, deviation }) => {
+          const { label } = describeFigure(key);
+          return (
+            <li key={`${key}-${channel}`}>
+              {label}, {channelName(channel)}: {formatFigureLine(key, { value: mean })}, spread{' '}
+              {deviation.toPrecision(2)}
+            </li>
+          );
+        })}
+      </ul>
+    </>
   );
 }
 
