@@ -326,7 +326,7 @@ describe('usage', () => {
 describe('sums of a bench', () => {
   const record = async (wav: string, ...more: string[]): Promise<string> => {
     const name = wav.replace('.wav', '.record.json');
-    const { out, code } = await cli('analyse', wav, '--json', '--traces', 'full', ...more);
+    const { out, code } = await cli('analyse', wav, '--json', ...more);
     expect(code).toBe(0);
     writeFileSync(join(folder, name), out);
     return name;

@@ -117,7 +117,7 @@ export class LiveBench {
     if (choice?.kind !== 'practice') return;
     this.#rig?.setDevice(device);
     this.#set({ choice: { ...choice, device } });
-    void this.#worker?.api.noteChange();
+    void this.#worker?.api.noteChange(0);
   }
 
   /** What the books say of the rig; a lower limit holds at once. */
@@ -148,10 +148,10 @@ export class LiveBench {
       notice: null,
     });
     await this.#look(form, tonesOf(form));
-    await this.#worker?.api.noteChange();
+    await this.#worker?.api.noteChange(rampS);
     // Once the level stands, what came before it leaves the averages.
     await wait(rampS);
-    if (this.#state.playing?.form === form) await this.#worker?.api.noteChange();
+    if (this.#state.playing?.form === form) await this.#worker?.api.noteChange(0);
   }
 
   /** How the picture is made, without touching what sounds. */
@@ -172,7 +172,7 @@ export class LiveBench {
     this.#set({ playing: null });
     if (playing) {
       await this.#look(playing.form, []);
-      await this.#worker?.api.noteChange();
+      await this.#worker?.api.noteChange(0);
     }
   }
 
@@ -303,7 +303,7 @@ export class LiveBench {
   ): Promise<void> {
     const { api, rig } = this.#opened();
     const totalS = (channels[0]?.length ?? 0) / rig.sampleRateHz;
-    await api.noteChange();
+    await api.noteChange(0);
     await api.startRecording();
     this.#takeBeganMs = Date.now();
     await wait(PRE_ROLL_S);

@@ -139,6 +139,23 @@ describe('a tone that plays', () => {
   }
 });
 
+describe('a tone that rises into clipping', () => {
+  it('holds no damaged block: its corners are its own', () => {
+    desk.noteChange(3);
+    let frame = 0;
+    feed(
+      (function* rising() {
+        for (const block of tone(5)) {
+          const gain = 10 ** (Math.min(0, -40 + (frame / RATE_HZ) * (40 / 3)) / 20);
+          frame += BLOCK;
+          yield block.map((samples) => samples.map((x) => Math.min(0.35, gain * x)));
+        }
+      })(),
+    );
+    expect(states.at(-1)!.breakCount).toBe(0);
+  });
+});
+
 describe('damaged blocks', () => {
   /** Seven in a minute: three zeroed, two dropped, two repeated. */
   function* damaged(): Generator<Float32Array[]> {

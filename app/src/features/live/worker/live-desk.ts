@@ -32,6 +32,8 @@ const AT_HAND_S = 10;
 /** A tone's measure gains little from more. */
 const KEPT_TONE_S = 5;
 const SHORTEST_TONE_S = 0.5;
+/** A change has come through the rig by then. */
+const SETTLE_S = 0.5;
 
 const DEFAULT_LOOK: Look = {
   fftLength: 65_536,
@@ -78,9 +80,13 @@ export class LiveDesk {
     if (isOtherTone) this.noteChange();
   }
 
-  /** The signal itself changes now: averages begin anew, jumps of the next moments are its own. */
-  noteChange(): void {
-    const settleFrames = Math.round(0.5 * this.#rateHz);
+  /**
+   * The signal itself changes now: averages begin anew, jumps of the next moments are its own.
+   *
+   * @param lastsS - how long it goes on changing; while a clipping tone rises, its corners grow
+   */
+  noteChange(lastsS = 0): void {
+    const settleFrames = Math.round((lastsS + SETTLE_S) * this.#rateHz);
     this.#detector?.setTones(this.#look.tonesHz);
     this.#detector?.expectChange(this.#frames, this.#frames + settleFrames);
     this.#analyser?.skip();

@@ -41,7 +41,7 @@ const api = {
     );
   },
   setLook: (look: Look) => theDesk().setLook(look),
-  noteChange: () => theDesk().noteChange(),
+  noteChange: (lastsS: number) => theDesk().noteChange(lastsS),
   startRecording: () => theDesk().startRecording(),
   dropRecording: () => theDesk().dropRecording(),
   finishRecording: (request: TakeRequest, onProgress: (share: number) => void) =>
