@@ -17,5 +17,7 @@ export default defineConfig({
     include: ['src/**/*.test.{ts,tsx}'],
     environment: 'jsdom',
     setupFiles: ['./src/test-setup.ts'],
+    // As many as the smallest machine has processors: by itself it would leave one idle.
+    maxWorkers: 2,
   },
 });

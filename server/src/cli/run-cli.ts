@@ -16,11 +16,11 @@ const COMMANDS: ReadonlyMap<string, Command> = new Map<string, Command>([
   ['inspect', runInspect],
   ['verify', runVerify],
   ['stimulus', runStimulus],
+  ['practice', runPractice],
+  ['upload', runUpload],
   ['power', runPower],
   ['impedance', runImpedance],
   ['phono', runPhono],
-  ['practice', runPractice],
-  ['upload', runUpload],
 ]);
 
 /** `--level -60`: a number after an option is its value, though it begins with a dash. */

@@ -23,6 +23,7 @@ const UNANSWERED_AFTER_S = 8;
 export class Heartbeat {
   readonly #logger = new Logger('Heartbeat');
   #timer: NodeJS.Timeout | undefined;
+  #workerId: () => string = () => '';
   #running: Promise<void> = Promise.resolve();
 
   constructor(
@@ -30,18 +31,19 @@ export class Heartbeat {
     @Inject(ENV) private readonly env: Env,
   ) {}
 
-  /** @param workerId - the queue's id of this process, which stands on the jobs it holds */
-  async start(workerId: string): Promise<void> {
-    await this.beat(workerId);
+  /** @param workerId - gives the queue's id of this process, which stands on the jobs it holds */
+  async start(workerId: () => string): Promise<void> {
+    this.#workerId = workerId;
+    await this.beat(workerId());
     this.#timer = setInterval(() => {
-      this.#running = this.#running.then(() => this.tick(workerId));
+      this.#running = this.#running.then(() => this.tick(workerId()));
     }, this.env.WORKER_HEARTBEAT_MS);
   }
 
-  async stop(workerId: string): Promise<void> {
+  async stop(): Promise<void> {
     clearInterval(this.#timer);
     await this.#running;
-    await this.dataSource.query('DELETE FROM worker WHERE id = $1', [workerId]);
+    await this.dataSource.query('DELETE FROM worker WHERE id = $1', [this.#workerId()]);
   }
 
   private async tick(workerId: string): Promise<void> {
