@@ -131,6 +131,10 @@ describe('output impedance by a change of load', () => {
     expect(impedanceOfDrop(-0.001, { loadOhm: 8 }).belowOhm).toBeGreaterThan(0);
   });
 
+  it('refuses exchanged takes: no passive load raises the level', () => {
+    expect(() => outputImpedance(toneAt(-1), toneAt(0), { loadOhm: 8 })).toThrow(/1\.000 dB louder/);
+  });
+
   it('refuses takes that are not of one tone', () => {
     expect(() => outputImpedance(toneAt(0, 1000), toneAt(-0.1, 1100), { loadOhm: 8 })).toThrow(
       /tones .* differ/,

@@ -30,7 +30,7 @@ const MOST_FREQUENCY_RATIO = 1.001;
  * Output impedance and damping factor by a change of load.
  *
  * @param drop - level without the load less level with it, dB
- * @throws DspInputError `BAD_ARGUMENT` for a load or an uncertainty that is not above 0
+ * @throws DspInputError `BAD_ARGUMENT` for a load or an uncertainty that is not above 0, and for a load that raises the level
  * @see IEC 60268-3, output source impedance: Z = R (U0 / UL - 1); damping factor R / Z
  */
 export function impedanceOfDrop(
@@ -44,6 +44,12 @@ export function impedanceOfDrop(
   const impedanceAt = (dropDb: number): number => loadOhm * (10 ** (dropDb / 20) - 1);
   // Both levels are as uncertain as each other.
   const expandedDb = COVERAGE_FACTOR * Math.SQRT2 * standardUncertaintyDb;
+  if (levelDropDb < -expandedDb) {
+    throw new DspInputError(
+      'BAD_ARGUMENT',
+      `the take with the load is ${(-levelDropDb).toFixed(3)} dB louder than the one without: are the two exchanged, or the ranges different?`,
+    );
+  }
   const expandedUncertaintyOhm = impedanceAt(levelDropDb + expandedDb) - impedanceAt(levelDropDb);
   if (levelDropDb <= expandedDb) {
     return {
